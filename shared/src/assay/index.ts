@@ -1,0 +1,2 @@
+export * from './assay-error.js'
+export * from './version.js'
