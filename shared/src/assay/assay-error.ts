@@ -13,6 +13,9 @@ export type AssayErrorCode =
   | 'invalid-argument'
   | 'no-root-in-range'
   | 'numerical-overflow'
+  | 'unknown-unit'
+  | 'invalid-time'
+  | 'time-order'
 
 /**
  * Thrown by every function of the engine for input it cannot answer honestly.
