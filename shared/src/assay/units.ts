@@ -39,10 +39,10 @@ export interface ConvertUnitInput {
  *
  * Source: definition of the units; mmol/L = mg/L divided by the molar mass in g/mol (CIAAW 2021 atomic weights).
  *
- * @returns value in the unit asked for, the unit, and the factor that was used
+ * @returns the value in the unit asked for
  * @throws AssayError unknown-unit; non-finite; invalid-argument: no molar mass where one is needed, or not above zero
  */
-export function convertUnit(input: ConvertUnitInput) {
+export function convertUnit(input: ConvertUnitInput): number {
   requireObject(input, 'conversion')
   const value = requireFinite(input.value, 'value to convert')
   const from = requireUnit(input.from)
@@ -55,12 +55,7 @@ export function convertUnit(input: ConvertUnitInput) {
     const molarMass = requirePositive(input.molarMass, 'molar mass')
     factor = isAmount(to) ? factor.div(molarMass) : factor.mul(molarMass)
   }
-  return {
-    value: finiteResult(new Decimal(value).mul(factor).toNumber(), 'converted value'),
-    unit: to,
-    factor: finiteResult(factor.toNumber(), 'conversion factor'),
-    method: `conversion from ${from} to ${to}`,
-  }
+  return finiteResult(new Decimal(value).mul(factor).toNumber(), 'converted value')
 }
 
 export interface ApplyDilutionInput {
