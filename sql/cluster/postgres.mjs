@@ -108,7 +108,7 @@ const waitUntilReady = async ({ postgres, service, port }) => {
 }
 
 /** Starts the server; when another program takes the port in the same moment, tries with the next. */
-const startServer = async ({ postgres, pgdata, isThrowAway, wishedPort, onDeath }) => {
+const startServer = async ({ postgres, pgdata, isThrowAway, wishedPort, watchdog, onDeath }) => {
   for (let attempt = 0; ; attempt += 1) {
     const port = await freePort(attempt === 0 ? wishedPort : undefined)
     let isUp = false
@@ -121,6 +121,7 @@ const startServer = async ({ postgres, pgdata, isThrowAway, wishedPort, onDeath 
       env: cleanEnv(),
       onDeath: (death) => isUp && onDeath?.(death),
     })
+    watchdog?.watch({ pid: service.pid, startTime: service.startTime, signal: 'SIGINT' })
     isUp = await waitUntilReady({ postgres, service, port })
     if (isUp) return { service, port }
     await service.stop({ signal: 'SIGINT' })
@@ -156,9 +157,8 @@ export const startCluster = async ({ home, isThrowAway = false, watchdog, onDeat
   await clearPrevious(pgdata)
 
   const wishedPort = existsSync(portFile) ? Number(readFileSync(portFile, 'utf8')) : undefined
-  const { service, port } = await startServer({ postgres, pgdata, isThrowAway, wishedPort, onDeath })
+  const { service, port } = await startServer({ postgres, pgdata, isThrowAway, wishedPort, watchdog, onDeath })
   writeFileSync(portFile, String(port))
-  watchdog?.watch({ pid: service.pid, startTime: service.startTime, signal: 'SIGINT' })
 
   const cluster = clusterAt({ postgres, port, secrets, service })
   await cluster.seeToRoles()

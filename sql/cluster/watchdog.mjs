@@ -1,6 +1,6 @@
 // A launcher that is killed outright (kill -9, a closed container) cannot tidy up. This small process outlives
-// it: it hears by a closed pipe that the launcher has gone, ends the processes the launcher had started and
-// removes the folders it had meant to remove.
+// it: it hears by a closed pipe that the launcher has gone, ends those of its processes that still run and
+// removes the folders it had meant to remove. After an orderly end there is nothing left to do.
 
 import { spawn } from 'node:child_process'
 import { rmSync } from 'node:fs'
@@ -21,7 +21,6 @@ export const startWatchdog = () => {
     /** `signal`: what ends it in order, e.g. SIGINT for PostgreSQL's fast shutdown. */
     watch: ({ pid, startTime, signal = 'SIGTERM' }) => tell({ pid, startTime, signal }),
     removeLater: (folder) => tell({ folder }),
-    release: () => child.stdin.end(`${JSON.stringify({ isDone: true })}\n`),
   }
 }
 
@@ -38,7 +37,6 @@ const main = async () => {
   const folders = []
   for await (const line of createInterface({ input: process.stdin })) {
     const message = JSON.parse(line)
-    if (message.isDone) return
     if (message.folder) folders.push(message.folder)
     if (message.pid) processes.unshift(message)
   }
