@@ -540,6 +540,21 @@ create table certificate_openings (
 );
 create index certificate_openings_by_certificate on certificate_openings (certificate_id);
 
+-- A signature covers a hash of exactly what was on the screen; when that changes, it no longer stands.
+create table signatures (
+  id bigint generated always as identity primary key,
+  thing text not null check (thing in ('calibrations', 'batches', 'certificates')),
+  thing_id bigint not null,
+  meaning text not null check (meaning in ('prepared', 'reviewed', 'accepted for use', 'released', 'amended')),
+  user_id bigint not null references users,
+  printed_name text not null,
+  role text not null,
+  at timestamptz not null default weirlight_now(),
+  content jsonb not null,
+  content_sha256 text not null
+);
+create index signatures_by_thing on signatures (thing, thing_id);
+
 create table validation_runs (
   id bigint generated always as identity primary key,
   at timestamptz not null default weirlight_now(),
@@ -567,11 +582,13 @@ begin
   foreach watched in array array[
     'laboratory', 'programmes', 'limits', 'clocks', 'methods', 'clients', 'users', 'authorisations', 'contacts',
     'sampling_points', 'material_lots', 'instruments', 'instrument_checks', 'samples', 'determinations', 'calibrations',
-    'calibration_lots', 'calibration_standards', 'calibration_readings', 'batches', 'batch_lots', 'positions',
-    'position_readings', 'finding_actions', 'results', 'alerts', 'certificates', 'certificate_openings'
+    'calibration_standards', 'calibration_readings', 'batches', 'positions', 'position_readings', 'finding_actions',
+    'results', 'alerts', 'certificates', 'certificate_openings', 'signatures'
   ] loop
     perform watch_history(watched::regclass);
   end loop;
+  perform watch_history('calibration_lots', 'calibration_id');
+  perform watch_history('batch_lots', 'batch_id');
 
   foreach watched in array array[
     'laboratory', 'clients', 'users', 'user_tokens', 'contacts', 'sampling_points', 'material_lots', 'instruments', 'samples',
@@ -584,7 +601,7 @@ begin
   perform grant_to_app('select, insert, delete', 'calibration_lots');
   foreach watched in array array[
     'programmes', 'limits', 'clocks', 'authorisations', 'batch_lots', 'instrument_checks', 'calibration_readings', 'position_readings',
-    'finding_actions', 'certificate_results', 'certificate_documents', 'certificate_openings', 'validation_runs'
+    'finding_actions', 'signatures', 'certificate_results', 'certificate_documents', 'certificate_openings', 'validation_runs'
   ] loop
     perform grant_to_app('select, insert', watched::regclass);
   end loop;
@@ -598,6 +615,7 @@ select forbid_change('calibration_readings');
 select forbid_change('position_readings');
 select forbid_change('finding_actions');
 select forbid_change('instrument_checks');
+select forbid_change('signatures');
 select forbid_change('certificate_documents');
 select forbid_change('certificate_results');
 select forbid_change('certificates', 'state', 'version', 'withdrawn_reason');
@@ -612,6 +630,7 @@ select stamp_times('finding_actions', 'at');
 select stamp_times('instrument_checks', 'checked_at');
 select stamp_times('results', 'measured_at', 'reviewed_at', 'released_at');
 select stamp_times('alerts', 'raised_at', 'notified_at', 'acknowledged_at', 'closed_at');
+select stamp_times('signatures', 'at');
 select stamp_times('certificates', 'issued_at');
 select stamp_times('certificate_documents', 'rendered_at');
 select stamp_times('certificate_openings', 'at');
@@ -619,12 +638,5 @@ select stamp_times('validation_runs', 'at');
 select stamp_times('uploads', 'uploaded_at', 'applied_at');
 
 -- the application draws numbers; it never sets a sequence
-do $$
-declare seq text;
-begin
-  foreach seq in array array['reagent_numbers', 'standard_numbers', 'instrument_numbers', 'sample_numbers', 'calibration_numbers',
-    'batch_numbers', 'alert_numbers', 'certificate_numbers'] loop
-    execute format('grant usage on sequence %I to %I', seq, coalesce(nullif(current_setting('weirlight.app_role', true), ''), 'weirlight_app'));
-  end loop;
-end
-$$;
+select grant_to_app('usage', seq) from unnest(array['reagent_numbers', 'standard_numbers', 'instrument_numbers', 'sample_numbers',
+  'calibration_numbers', 'batch_numbers', 'alert_numbers', 'certificate_numbers']::regclass[]) seq;
