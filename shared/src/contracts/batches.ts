@@ -60,6 +60,7 @@ export const assessmentRules = z.object({
   /** mg/L, a method blank must stay below */
   blankLimit: z.number(),
 })
+export type AssessmentRules = z.infer<typeof assessmentRules>
 export const positionLimit = z.object({
   id,
   name: z.string(),
@@ -70,19 +71,25 @@ export const positionLimit = z.object({
   rule: z.enum(['simple', 'rounded', 'guarded', 'four-zone']),
   source: z.string(),
 })
+export type PositionLimit = z.infer<typeof positionLimit>
 export const reportingRules = z.object({
   displayUnit: z.enum(['mg/L', 'ug/L']),
   ties: z.enum(['half-up', 'half-even']),
   nonDetect: z.string(),
   digits: z.number(),
 })
-/** What the readings of one position come to. Computed by `assessPosition` in shared/assay-use, on the page and on the server. */
+export type ReportingRules = z.infer<typeof reportingRules>
+/** What the readings of one position come to. Computed by `assessPosition` of shared/worksheet, on the page and on the server. */
 export const assessment = z.object({
   meanAbsorbance: z.number().nullable(),
   concentration: z.number().nullable(),
   standardError: z.number().nullable(),
   expandedUncertainty: z.number().nullable(),
+  /** the number as reported, without unit and uncertainty */
   reportedText: z.string().nullable(),
+  uncertaintyText: z.string().nullable(),
+  /** mg/L, by the programme's rule for values below the limits */
+  numericForCompliance: z.number().nullable(),
   unit: z.enum(['mg/L', 'ug/L']),
   flags: z.array(z.string()),
   /** the quality-control figure in words, e.g. `99.8 %`, `3.6 % apart` */

@@ -1,0 +1,3 @@
+export * from './assess-calibration.js'
+export * from './assess-position.js'
+export * from './find-in-batch.js'
