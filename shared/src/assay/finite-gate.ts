@@ -25,7 +25,7 @@ function clean(value: unknown): unknown {
  * Last gate of every statistical function: no NaN or Infinity leaves, and -0 leaves as 0, so that a result reads
  * back from JSON as the same double. Works in place on the object the function has just made.
  */
-export function gate<T>(result: T): T {
+export function gate<const T>(result: T): T {
   clean(result)
   return result
 }
