@@ -90,7 +90,7 @@ export const assessment = z.object({
   uncertaintyText: z.string().nullable(),
   /** mg/L, by the programme's rule for values below the limits */
   numericForCompliance: z.number().nullable(),
-  unit: z.enum(['mg/L', 'ug/L']),
+  unit: z.enum(['mg/L', 'ug/L']).nullable(),
   flags: z.array(z.string()),
   /** the quality-control figure in words, e.g. `99.8 %`, `3.6 % apart` */
   qcText: z.string().nullable(),
