@@ -63,7 +63,9 @@ export const buildOne = async ({ name, sources, proof }) => {
 
 /** The builds that are missing or older than their sources. */
 export const staleBuilds = () =>
-  builds.filter(({ name, sources, proof }) => !existsSync(inRoot(proof)) || readStamp(name) !== hashOf(sources))
+  builds.filter(
+    ({ name, sources, proof }) => !existsSync(inRoot(proof)) || readStamp(name) !== hashOf(sources),
+  )
 
 export const ensureBuilt = async () => {
   for (const build of staleBuilds()) await step(`Building ${build.name}`, () => buildOne(build))

@@ -103,7 +103,12 @@ test('the death of a service is told once, with its last words; a stop is no dea
 test('a service that does not listen to a polite stop is killed', async () => {
   const args = ['-e', 'process.on("SIGTERM", () => {}); console.log("on"); setInterval(() => {}, 1000)']
   const isOn = { now: false }
-  const stubborn = startService({ name: 'x', command: process.execPath, args, onOutput: () => (isOn.now = true) })
+  const stubborn = startService({
+    name: 'x',
+    command: process.execPath,
+    args,
+    onOutput: () => (isOn.now = true),
+  })
   while (!isOn.now) await new Promise((resolve) => setTimeout(resolve, 20))
   await stubborn.stop({ patienceMs: 100 })
   assert.equal((await stubborn.ended).signal, 'SIGKILL')

@@ -35,12 +35,16 @@ export const markRestored = (home) => demoMark(home).write('restored')
 
 const loadDemo = async ({ ownerUrl, appUrl, accountsFile }) => {
   rmSync(accountsFile, { force: true })
-  await nodeRun('Loading the demo laboratory', ['--enable-source-maps', inRoot('api', 'dist', 'load-demo.js')], {
-    NODE_ENV: 'production',
-    OWNER_DATABASE_URL: ownerUrl,
-    DATABASE_URL: appUrl,
-    DEMO_ACCOUNTS_FILE: accountsFile,
-  })
+  await nodeRun(
+    'Loading the demo laboratory',
+    ['--enable-source-maps', inRoot('api', 'dist', 'load-demo.js')],
+    {
+      NODE_ENV: 'production',
+      OWNER_DATABASE_URL: ownerUrl,
+      DATABASE_URL: appUrl,
+      DEMO_ACCOUNTS_FILE: accountsFile,
+    },
+  )
   if (!existsSync(accountsFile)) throw new Refusal(`Loading the demo laboratory wrote no ${accountsFile}.`)
 }
 

@@ -45,5 +45,7 @@ export const throwAwayFolder = async () => {
     if (await canServerReach(postgres, folder)) return folder
     rmSync(folder, { recursive: true })
   }
-  throw new Refusal(`PostgreSQL's account can get into neither ${tmpdir()} nor /var/tmp for a throw-away cluster.`)
+  throw new Refusal(
+    `PostgreSQL's account can get into neither ${tmpdir()} nor /var/tmp for a throw-away cluster.`,
+  )
 }

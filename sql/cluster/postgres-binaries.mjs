@@ -28,7 +28,7 @@ const serverAccount = () => {
   if (!line) {
     throw new Refusal(
       "PostgreSQL is here, but the account 'postgres' that should run it is not.\n" +
-        'Install Debian\'s package again: apt-get install --reinstall postgresql-common',
+        "Install Debian's package again: apt-get install --reinstall postgresql-common",
     )
   }
   const [, , uid, gid] = line.split(':')

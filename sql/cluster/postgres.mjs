@@ -1,5 +1,14 @@
 import { randomBytes } from 'node:crypto'
-import { chmodSync, chownSync, existsSync, mkdirSync, readFileSync, renameSync, rmSync, writeFileSync } from 'node:fs'
+import {
+  chmodSync,
+  chownSync,
+  existsSync,
+  mkdirSync,
+  readFileSync,
+  renameSync,
+  rmSync,
+  writeFileSync,
+} from 'node:fs'
 import { join } from 'node:path'
 import { freePort, isPortFree } from './ports.mjs'
 import { ensurePostgres } from './postgres-binaries.mjs'
@@ -157,7 +166,14 @@ export const startCluster = async ({ home, isThrowAway = false, watchdog, onDeat
   await clearPrevious(pgdata)
 
   const wishedPort = existsSync(portFile) ? Number(readFileSync(portFile, 'utf8')) : undefined
-  const { service, port } = await startServer({ postgres, pgdata, isThrowAway, wishedPort, watchdog, onDeath })
+  const { service, port } = await startServer({
+    postgres,
+    pgdata,
+    isThrowAway,
+    wishedPort,
+    watchdog,
+    onDeath,
+  })
   writeFileSync(portFile, String(port))
 
   const cluster = clusterAt({ postgres, port, secrets, service })
@@ -214,7 +230,9 @@ const clusterAt = ({ postgres, port, secrets, service }) => {
     /** A database owned by the owner's role, closed to everybody the migrations do not let in. */
     createDatabase: async (name, { template } = {}) => {
       await sql(`create database ${name} owner ${roles.owner} ${template ? `template ${template}` : ''}`)
-      await sql(`revoke all on database ${name} from public; grant connect on database ${name} to ${roles.app}`)
+      await sql(
+        `revoke all on database ${name} from public; grant connect on database ${name} to ${roles.app}`,
+      )
     },
     dropDatabase: (name) => sql(`drop database if exists ${name} with (force)`),
     /** PostgreSQL's fast shutdown: ends sessions, writes everything down. */

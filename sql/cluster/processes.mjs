@@ -52,10 +52,12 @@ export const run = (command, args, { input, isEchoed = false, ...options } = {})
     going.add(child)
     const stdout = []
     const both = []
-    const take = (...lists) => (chunk) => {
-      for (const list of lists) list.push(chunk)
-      if (isEchoed) process.stdout.write(chunk)
-    }
+    const take =
+      (...lists) =>
+      (chunk) => {
+        for (const list of lists) list.push(chunk)
+        if (isEchoed) process.stdout.write(chunk)
+      }
     child.stdout.on('data', take(stdout, both))
     child.stderr.on('data', take(both))
     child.once('error', (error) => {

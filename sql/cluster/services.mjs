@@ -83,7 +83,13 @@ export const mailService = async ({ folder, wished = {}, watchdog, onDeath }) =>
   }
 
   await start()
-  return { url, smtpUrl: `smtp://${host}:${smtpPort}`, start, kill: () => service.kill(), stop: () => service.stop() }
+  return {
+    url,
+    smtpUrl: `smtp://${host}:${smtpPort}`,
+    start,
+    kill: () => service.kill(),
+    stop: () => service.stop(),
+  }
 }
 
 /** A secret that stays the same from start to start, so that a restart signs nobody out. */
@@ -119,7 +125,8 @@ export const apiService = async ({ folder, port, env, watchdog, onDeath }) => {
     watchdog?.watch(service)
     const { isUp, status } = await waitForAnswer({ url: `${url}/api/health`, service })
     if (!isUp) throw new Error(`The application did not start:\n${service.lastLines()}`)
-    if (status) warn(`The application runs, but ${url}/api/health answers ${status}: a part of it is not well.`)
+    if (status)
+      warn(`The application runs, but ${url}/api/health answers ${status}: a part of it is not well.`)
   }
 
   await start()

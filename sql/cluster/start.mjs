@@ -40,7 +40,11 @@ const sayAccounts = (accounts) => {
   const width = (key) => Math.max(...accounts.map((account) => String(account[key] ?? '').length))
   say('\n  Sign in with one of these (also in .data/demo-accounts.json):\n')
   for (const { role, name, email, passphrase } of accounts) {
-    const cells = [role.padEnd(width('role')), (name ?? '').padEnd(width('name')), email.padEnd(width('email'))]
+    const cells = [
+      role.padEnd(width('role')),
+      (name ?? '').padEnd(width('name')),
+      email.padEnd(width('email')),
+    ]
     say(`    ${cells.join('   ')}   ${passphrase}`)
   }
 }
@@ -104,7 +108,8 @@ const startReal = async () => {
   await prepare()
   const watchdog = startWatchdog()
   const { onDeath, death } = deathWatch()
-  if (!OWNER_DATABASE_URL) say(quiet('OWNER_DATABASE_URL is not set: the migrations run as DATABASE_URL says.'))
+  if (!OWNER_DATABASE_URL)
+    say(quiet('OWNER_DATABASE_URL is not set: the migrations run as DATABASE_URL says.'))
   await migrate(OWNER_DATABASE_URL ?? DATABASE_URL)
   const { HOST } = process.env
   const api = await step('Starting the application', () =>

@@ -1,0 +1,171 @@
+import { existsSync, mkdirSync, readdirSync, readFileSync, rmSync } from 'node:fs'
+import { join } from 'node:path'
+import { buildOne, staleBuilds } from './build.mjs'
+import { noCounts, oneCheck, playwrightCounts, settle, tapCounts, vitestCounts } from './counts.mjs'
+import { inRoot, root } from './paths.mjs'
+import { run } from './processes.mjs'
+
+const bin = (...parts) => inRoot('node_modules', ...parts)
+
+const node = (args, options = {}) => run(process.execPath, args, { cwd: root, ...options })
+
+const readReport = (file, read) => {
+  try {
+    return read(JSON.parse(readFileSync(file, 'utf8')))
+  } catch {
+    return undefined
+  }
+}
+
+/** A tool whose exit code is its verdict. */
+const tool = (name, args, options) => ({
+  name,
+  run: async () => {
+    const answer = await node(args, options)
+    return { counts: oneCheck(answer.code), output: answer.output }
+  },
+})
+
+const lint = [
+  tool('eslint', [bin('eslint', 'bin', 'eslint.js'), '--max-warnings=0', '.']),
+  tool('prettier', [bin('prettier', 'bin', 'prettier.cjs'), '--check', '--log-level=warn', '.']),
+  tool('import rules', [
+    bin('dependency-cruiser', 'bin', 'dependency-cruise.mjs'),
+    ...['--config', '.dependency-cruiser.mjs', 'shared/src', 'api/src', 'web/src', 'e2e'],
+  ]),
+]
+
+const types = ['shared', 'api', 'web', 'e2e'].map((workspace) =>
+  tool(`types of ${workspace}`, [bin('typescript', 'bin', 'tsc'), '-p', workspace, '--noEmit']),
+)
+
+const vitest = ({ name, workspace, args, env, folder, isEchoed = false }) => ({
+  name,
+  run: async () => {
+    const report = join(folder, `${name.replaceAll(' ', '-')}.json`)
+    rmSync(report, { force: true })
+    const reporters = ['--reporter=default', '--reporter=json', `--outputFile.json=${report}`]
+    const answer = await node([bin('vitest', 'vitest.mjs'), 'run', ...reporters, ...args], {
+      cwd: inRoot(workspace),
+      env: { ...process.env, ...env },
+      isEchoed,
+    })
+    const counts = settle({ counts: readReport(report, vitestCounts), code: answer.code })
+    return { counts, output: answer.output }
+  },
+})
+
+const launcherTests = {
+  name: 'tests of the launcher',
+  run: async () => {
+    const answer = await node(['--test', '--test-reporter=tap', inRoot('sql', 'cluster', 'cluster.spec.mjs')])
+    return { counts: settle({ counts: tapCounts(answer.stdout), code: answer.code }), output: answer.output }
+  },
+}
+
+const small = ({ folder, rest }) => [
+  launcherTests,
+  vitest({ name: 'small tests of shared', workspace: 'shared', args: rest, folder }),
+  vitest({
+    name: 'small tests of api',
+    workspace: 'api',
+    args: [
+      '--exclude',
+      '**/*.db.spec.ts',
+      '--exclude',
+      '**/node_modules/**',
+      '--exclude',
+      '**/dist/**',
+      ...rest,
+    ],
+    folder,
+  }),
+  vitest({ name: 'small tests of web', workspace: 'web', args: rest, folder }),
+]
+
+/** The tests clone databases and try both roles, so they need the superuser's address beside the others'. */
+const database = ({ folder, rest, cluster }) =>
+  vitest({
+    name: 'database tests',
+    workspace: 'api',
+    args: rest.length > 0 ? rest : ['.db.spec'],
+    env: {
+      TEST_ADMIN_URL: cluster.url('admin', 'postgres'),
+      TEST_OWNER_URL: cluster.url('owner', 'postgres'),
+      TEST_APP_URL: cluster.url('app', 'postgres'),
+    },
+    folder,
+  })
+
+/** Builds what is not already built from exactly these sources. */
+const build = {
+  name: 'production build',
+  run: async () => {
+    try {
+      for (const stale of staleBuilds()) await buildOne(stale)
+      return { counts: oneCheck(0), output: '' }
+    } catch (error) {
+      return { counts: oneCheck(1), output: `${error.message}\n` }
+    }
+  },
+}
+
+const browser = ({ folder, rest, product, controlUrl, chromium }) => ({
+  name: 'browser tests',
+  run: async () => {
+    const report = join(folder, 'browser-tests.json')
+    const args = [
+      bin('@playwright', 'test', 'cli.js'),
+      'test',
+      '--retries=0',
+      '--reporter=list,json',
+      ...rest,
+    ]
+    const answer = await node(args, {
+      cwd: inRoot('e2e'),
+      env: {
+        ...process.env,
+        CHROMIUM_PATH: chromium,
+        E2E_ACCOUNTS_FILE: product.accountsFile,
+        E2E_CONTROL_URL: controlUrl,
+        E2E_OWNER_DATABASE_URL: product.ownerUrl,
+        PLAYWRIGHT_JSON_OUTPUT_FILE: report,
+        PLAYWRIGHT_JSON_OUTPUT_NAME: report,
+      },
+      isEchoed: true,
+    })
+    const counts = settle({ counts: readReport(report, playwrightCounts), code: answer.code })
+    return { counts, output: '' }
+  },
+})
+
+const checksFolder = () => inRoot('sql', 'checks')
+
+/** Each file of sql/checks returns no rows on a healthy database. */
+const checks = ({ cluster, databaseName }) => ({
+  name: 'checks of the seeded database',
+  run: async () => {
+    const files = existsSync(checksFolder())
+      ? readdirSync(checksFolder()).filter((f) => f.endsWith('.sql'))
+      : []
+    const counts = { ...noCounts }
+    const output = []
+    for (const file of files.sort()) {
+      const rows = await cluster
+        .sql(readFileSync(join(checksFolder(), file), 'utf8'), { database: databaseName, role: 'owner' })
+        .catch((error) => error.message)
+      counts[rows === '' ? 'passed' : 'failed'] += 1
+      if (rows !== '')
+        output.push(`sql/checks/${file} returned:\n${rows.split('\n').slice(0, 20).join('\n')}\n`)
+    }
+    return { counts: settle({ counts, code: 0 }), output: output.join('\n') }
+  },
+})
+
+export const suiteGroups = { lint, types, small, database, build, browser, checks }
+
+export const reportFolder = (home) => {
+  const folder = join(home, 'reports')
+  mkdirSync(folder, { recursive: true })
+  return folder
+}
