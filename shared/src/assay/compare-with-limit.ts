@@ -1,4 +1,3 @@
-import normal from '@stdlib/stats-base-dists-normal'
 import {
   finiteResult,
   requireFinite,
@@ -8,10 +7,10 @@ import {
 } from './argument-checks.js'
 import { AssayError } from './assay-error.js'
 import { Decimal, type DecimalValue } from './decimal.js'
+import { normalUpperProbability } from './distributions.js'
 import { decimalsKept, requireRounding, roundDecimal, type Rounding } from './rounding.js'
+import { DECISION_RULES, type DecisionRule } from './rule-names.js'
 
-export const DECISION_RULES = ['simple', 'rounded', 'guarded', 'four-zone'] as const
-export type DecisionRule = (typeof DECISION_RULES)[number]
 export type LimitVerdict = 'below' | 'conditional-below' | 'conditional-above' | 'above'
 
 export interface CompareWithLimitInput {
@@ -34,7 +33,7 @@ function probabilityAbove(difference: number, u: number): number {
   const z = difference / u
   if (z > 40) return 1
   if (z < -40) return 0
-  return normal.cdf(z, 0, 1)
+  return normalUpperProbability(-z)
 }
 
 /** Midpoint above the limit at which rounding tips over; the limit itself must survive the rounding. */

@@ -9,16 +9,7 @@ import {
 import { AssayError } from './assay-error.js'
 import { Decimal } from './decimal.js'
 import { decimalsKept, requireRounding, roundDecimal, roundReported, type Rounding } from './rounding.js'
-
-export const NON_DETECT_RULES = [
-  'less-than-loq',
-  'less-than-mdl',
-  'zero',
-  'half-loq',
-  'half-pql',
-  'as-measured',
-] as const
-export type NonDetectRule = (typeof NON_DETECT_RULES)[number]
+import { NON_DETECT_RULES, type NonDetectRule } from './rule-names.js'
 
 export type ReportFlag =
   'not-detected' | 'estimated' | 'above-range' | 'below-range' | 'quantification-above-limit'
@@ -47,9 +38,13 @@ interface Settled {
   isNumber: boolean
 }
 
-/** A limit behind a "<": as it stands up to three significant digits, else two, rounded up so that "<" stays true. */
-function limitText(limit: number): string {
+/**
+ * A limit behind a "<": as the rounding rule writes it where that leaves its value alone (0.01 to two digits is
+ * 0.010), else as it stands up to three significant digits, else two, rounded up so that "<" stays true.
+ */
+function limitText(limit: number, rounding: Rounding): string {
   const exact = new Decimal(limit)
+  if (roundDecimal(exact, rounding).eq(exact)) return roundReported(limit, rounding)
   if (exact.sd() <= 3) return exact.toFixed()
   return exact.toSignificantDigits(2, Decimal.ROUND_UP).toFixed()
 }
@@ -73,7 +68,7 @@ function settle(input: ReportValueInput, rounding: Rounding): Settled {
   const flags: ReportFlag[] = [isDetected ? 'estimated' : 'not-detected']
   const measured = { valueText: roundReported(x, rounding), numericForCompliance: x, flags, isNumber: true }
   const below = (limit: number, numericForCompliance: number) => ({
-    valueText: `<${limitText(limit)}`,
+    valueText: `<${limitText(limit, rounding)}`,
     numericForCompliance,
     flags,
     isNumber: false,
