@@ -12,12 +12,12 @@ const nodeRun = async (what, args, env) => {
   return answer
 }
 
-/** Brings the schema up to date, as the role that owns it. */
-export const migrate = (ownerUrl, env = {}) =>
+/** Brings the schema up to date, as the role that owns it, and lets the application's role in. */
+export const migrate = ({ ownerUrl, appUrl }) =>
   step('Running the migrations', () =>
     nodeRun('Running the migrations', ['--enable-source-maps', inRoot('api', 'dist', 'migrate.js')], {
-      ...env,
       OWNER_DATABASE_URL: ownerUrl,
+      DATABASE_URL: appUrl,
     }),
   )
 
@@ -61,7 +61,7 @@ export const openDatabase = async ({ cluster, home, hasDemo, accountsFile, name 
 
   const ownerUrl = cluster.url('owner', name)
   const appUrl = cluster.url('app', name)
-  await migrate(ownerUrl)
+  await migrate({ ownerUrl, appUrl })
 
   const isDemoWanted = hasDemo && (isNew || mark.read() === undefined)
   if (isDemoWanted) {

@@ -106,8 +106,7 @@ export const startProductOn = async (options) => {
  * The product with the demo laboratory on a throw-away cluster, for tests, benches and pictures.
  * `stop()` ends and removes all of it.
  */
-export const startProduct = async ({ hasDemo = true, onDeath, apiEnv } = {}) => {
-  const undo = undoStack()
+export const startProduct = async ({ hasDemo = true, onDeath, apiEnv, undo = undoStack() } = {}) => {
   const watchdog = startWatchdog()
   try {
     const { home, cluster } = await startThrowAwayCluster({ undo, watchdog, onDeath })

@@ -181,6 +181,14 @@ export const startCluster = async ({ home, isThrowAway = false, watchdog, onDeat
   return cluster
 }
 
+/** The cluster in `home` that another launcher runs. */
+export const attachCluster = async (home) => {
+  const { pgdata, secretsFile, portFile } = layoutOf(home)
+  const postgres = await ensurePostgres({ major: Number(readFileSync(join(pgdata, 'PG_VERSION'), 'utf8')) })
+  const secrets = readSecrets(secretsFile)
+  return clusterAt({ postgres, port: Number(readFileSync(portFile, 'utf8')), secrets })
+}
+
 const clusterAt = ({ postgres, port, secrets, service }) => {
   const url = (role, database) => `postgres://${roles[role]}:${secrets[role]}@${host}:${port}/${database}`
 
@@ -236,6 +244,6 @@ const clusterAt = ({ postgres, port, secrets, service }) => {
     },
     dropDatabase: (name) => sql(`drop database if exists ${name} with (force)`),
     /** PostgreSQL's fast shutdown: ends sessions, writes everything down. */
-    stop: () => service.stop({ signal: 'SIGINT', patienceMs: 30_000 }),
+    stop: () => service?.stop({ signal: 'SIGINT', patienceMs: 30_000 }),
   }
 }

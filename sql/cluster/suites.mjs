@@ -69,15 +69,7 @@ const small = ({ folder, rest }) => [
   vitest({
     name: 'small tests of api',
     workspace: 'api',
-    args: [
-      '--exclude',
-      '**/*.db.spec.ts',
-      '--exclude',
-      '**/node_modules/**',
-      '--exclude',
-      '**/dist/**',
-      ...rest,
-    ],
+    args: ['--project=small', ...rest],
     folder,
   }),
   vitest({ name: 'small tests of web', workspace: 'web', args: rest, folder }),
@@ -88,7 +80,7 @@ const database = ({ folder, rest, cluster }) =>
   vitest({
     name: 'database tests',
     workspace: 'api',
-    args: rest.length > 0 ? rest : ['.db.spec'],
+    args: ['--project=db', ...rest],
     env: {
       TEST_ADMIN_URL: cluster.url('admin', 'postgres'),
       TEST_OWNER_URL: cluster.url('owner', 'postgres'),
