@@ -8,7 +8,7 @@ export const house = {
     ['clients', 'programmes', 'methods', 'materials', 'instruments'],
     ['samples', 'calibrations'],
     ['batches'],
-    ['results'],
+    ['results', 'review'],
     ['alerts', 'certificates', 'charts', 'studies', 'actions'],
     ['today', 'portal'],
   ],

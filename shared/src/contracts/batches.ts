@@ -136,6 +136,8 @@ export const positionView = z.object({
   limits: z.array(positionLimit),
   reporting: reportingRules,
   assessment,
+  /** of the stored result, once the batch has been submitted: opens the number's story */
+  resultId: id.nullable(),
   version,
 })
 export type PositionView = z.infer<typeof positionView>

@@ -29,7 +29,11 @@ export const methodRow = z.object({
   calibrationsInForce: z.number(),
   determinationsWaiting: z.number(),
 })
-export const methodView = methodRow.extend({ definition: z.record(z.string(), z.unknown()) })
+export const methodView = methodRow.extend({
+  definition: z.record(z.string(), z.unknown()),
+  /** of the analyte, g/mol, from the reference data: the page needs it to judge a slope */
+  molarMass: z.number(),
+})
 export const listMethods = defineEndpoint({
   name: 'listMethods',
   summary: 'Methods of the laboratory',

@@ -1,3 +1,4 @@
 export * from './assess-calibration.js'
 export * from './assess-position.js'
 export * from './find-in-batch.js'
+export * from './read-back.js'
