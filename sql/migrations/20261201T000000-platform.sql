@@ -248,18 +248,18 @@ create function history_leaf(entry history) returns text language sql immutable
     entry.thing, entry.thing_id, entry.thing_number, entry.client_id, entry.operation, entry.old, entry.new)::text
 $$;
 
--- Each seal closes the entries (first_id, last_id] into a Merkle tree (RFC 9162, section 2.1) and chains its
+-- Each seal closes the entries from first_id to last_id, none of them sealed before, into a Merkle tree (RFC 9162, section 2.1) and chains its
 -- root to the seal before it.
 create table history_seals (
   number bigint primary key,
   sealed_at timestamptz not null,
-  after_id bigint not null,
+  first_id bigint not null,
   last_id bigint not null,
   entries bigint not null check (entries > 0),
   root bytea not null check (length(root) = 32),
   previous_head bytea not null check (length(previous_head) = 32),
   head bytea not null unique check (length(head) = 32),
-  check (last_id > after_id)
+  check (last_id >= first_id)
 );
 select stamp_times('history_seals', 'sealed_at');
 select forbid_change('history_seals');

@@ -1,0 +1,99 @@
+import { Global, Module, type DynamicModule, type Provider } from '@nestjs/common'
+import { APP_FILTER, APP_GUARD, APP_INTERCEPTOR, DiscoveryModule, DiscoveryService, MetadataScanner, Reflector } from '@nestjs/core'
+import { Clock } from './clock/clock.js'
+import { SettingsModule } from './config/settings.module.js'
+import { Settings, type SettingsValues } from './config/settings.js'
+import { Database } from './database/database.js'
+import { openPool } from './database/pool.js'
+import { EventsModule } from './events/events.module.js'
+import { HealthController } from './health/health.controller.js'
+import { HealthService } from './health/health.service.js'
+import { AccessGuard } from './http/access.guard.js'
+import { EndpointInterceptor } from './http/endpoint.interceptor.js'
+import { ProblemFilter } from './http/problem.filter.js'
+import { RouteCheck } from './http/route-check.js'
+import { JobHandlers } from './jobs/handlers.js'
+import { JobsService } from './jobs/jobs.service.js'
+import { LoggingModule } from './logging/logging.module.js'
+import { MailSender } from './mail/mail-sender.js'
+import { MailTransport } from './mail/mail-transport.js'
+import { MailRepository } from './mail/mail.repository.js'
+import { MailService } from './mail/mail.service.js'
+import { ActorsRepository } from './sessions/actors.repository.js'
+import { SessionService } from './sessions/session.service.js'
+import { SignInAttemptsRepository } from './sessions/sign-in-attempts.repository.js'
+import { SignInThrottle } from './sessions/sign-in-throttle.js'
+
+export interface PlatformOptions {
+  /** instead of the environment, for tests */
+  settings?: SettingsValues
+  /** works on jobs in this process */
+  isWorker: boolean
+  /** refuses to start while contracts, routes, jobs and handlers do not fit; off in tests of one module */
+  isStrict: boolean
+}
+
+const services = [
+  Clock,
+  ActorsRepository,
+  SessionService,
+  SignInAttemptsRepository,
+  SignInThrottle,
+  JobHandlers,
+  MailTransport,
+  MailRepository,
+  MailService,
+  MailSender,
+  HealthService,
+]
+
+/** Everything that knows no feature; a feature's module needs to import nothing to use it. */
+@Global()
+@Module({})
+export class PlatformModule {
+  static create(options: PlatformOptions): DynamicModule {
+    const built: Provider[] = [
+      {
+        provide: Database,
+        inject: [Settings, Clock],
+        useFactory: (settings: Settings, clock: Clock) => openDatabase(settings, clock),
+      },
+      {
+        provide: JobsService,
+        inject: [JobHandlers, Settings],
+        useFactory: (handlers: JobHandlers, settings: Settings) => new JobsService(handlers, options, settings),
+      },
+      {
+        provide: RouteCheck,
+        inject: [DiscoveryService, MetadataScanner, Reflector, Settings],
+        useFactory: (
+          discovery: DiscoveryService,
+          scanner: MetadataScanner,
+          reflector: Reflector,
+          settings: Settings,
+        ) => new RouteCheck(discovery, scanner, reflector, { isStrict: options.isStrict && !settings.isPartial }),
+      },
+    ]
+    return {
+      module: PlatformModule,
+      imports: [SettingsModule.of(options.settings), LoggingModule.create(), DiscoveryModule, EventsModule],
+      controllers: [HealthController],
+      providers: [
+        ...services,
+        ...built,
+        { provide: APP_GUARD, useClass: AccessGuard },
+        { provide: APP_INTERCEPTOR, useClass: EndpointInterceptor },
+        { provide: APP_FILTER, useClass: ProblemFilter },
+      ],
+      exports: [...services, Database, JobsService, RouteCheck],
+    }
+  }
+}
+
+function openDatabase(settings: Settings, clock: Clock): Database {
+  const pool = openPool({ url: settings.databaseUrl, size: settings.databasePool, name: 'weirlight' })
+  const readPool = settings.databaseReadUrl
+    ? openPool({ url: settings.databaseReadUrl, size: settings.databasePool, name: 'weirlight-read' })
+    : undefined
+  return new Database({ pool, readPool, clock })
+}
