@@ -1,7 +1,15 @@
-import { requireArray, requireFinite, requireNotNegative, requireObject, requireOneOf, requirePositive } from './argument-checks.js'
+import {
+  requireArray,
+  requireFinite,
+  requireNotNegative,
+  requireObject,
+  requireOneOf,
+  requirePositive,
+} from './argument-checks.js'
 import { AssayError } from './assay-error.js'
 import { describeSample } from './descriptive-statistics.js'
 import { gate } from './finite-gate.js'
+import { rootOfSquares } from './root-of-squares.js'
 import { ENGINE_VERSION } from './version.js'
 
 export interface UncertaintyComponent {
@@ -19,13 +27,6 @@ export interface CombinedUncertaintyInput {
   k?: number | undefined
 }
 
-/** Square root of a sum of squares without overflow on the way. */
-function rootOfSquares(values: readonly number[]): number {
-  const largest = values.reduce((most, value) => Math.max(most, Math.abs(value)), 0)
-  if (largest === 0) return 0
-  return largest * Math.sqrt(values.reduce((sum, value) => sum + (value / largest) * (value / largest), 0))
-}
-
 /**
  * Combined and expanded uncertainty from independent components of a result.
  *
@@ -40,13 +41,19 @@ export function combinedUncertainty(input: CombinedUncertaintyInput) {
   const at = requireFinite(input.at, 'result')
   const k = requirePositive(input.k ?? 2, 'coverage factor')
   const given = Array.from(requireArray(input.components, 'components'))
-  if (given.length === 0) throw new AssayError('too-few-values', 'An uncertainty needs at least one component.')
+  if (given.length === 0)
+    throw new AssayError('too-few-values', 'An uncertainty needs at least one component.')
   const components = given.map((component, index) => {
     requireObject(component, 'component')
     const kind = requireOneOf(component.kind, ['absolute', 'relative'], 'kind of component')
     const value = requireFinite(component.value, 'uncertainty', index)
     if (value < 0) throw new AssayError('invalid-argument', 'An uncertainty cannot be negative.', index)
-    return { name: String(component.name), kind, value, absolute: kind === 'relative' ? value * Math.abs(at) : value }
+    return {
+      name: String(component.name),
+      kind,
+      value,
+      absolute: kind === 'relative' ? value * Math.abs(at) : value,
+    }
   })
   const standardUncertainty = rootOfSquares(components.map((component) => component.absolute))
   return gate({
@@ -110,7 +117,8 @@ export function topDownUncertainty(input: TopDownUncertaintyInput) {
     const bias = requireFinite(run.bias, 'bias', index)
     const uReference = requireNotNegative(run.uReference, 'uncertainty of the reference')
     const n = run.n === undefined ? null : requirePositive(run.n, 'number of results')
-    if (n !== null && n < 1) throw new AssayError('invalid-argument', 'A bias needs at least one result.', index)
+    if (n !== null && n < 1)
+      throw new AssayError('invalid-argument', 'A bias needs at least one result.', index)
     const deviation = requireNotNegative(run.standardDeviation ?? uRw, 'standard deviation of the bias')
     return { bias, uReference, meanError: n === null ? 0 : deviation / Math.sqrt(n) }
   })
