@@ -289,6 +289,7 @@ create table calibrations (
   signed_by bigint references users,
   signed_at timestamptz,
   valid_until timestamptz,
+  justification text not null default '', -- why it was signed although a criterion failed
   returned_by bigint references users,
   returned_reason text not null default '',
   ended_at timestamptz,
@@ -371,6 +372,10 @@ create table batches (
   returned_by bigint references users,
   returned_reason text not null default '',
   review_comment text not null default '',
+  -- what the run sheet came to when it was last changed: lists read these instead of computing every batch
+  positions_read int not null default 0,
+  above_limit int not null default 0,
+  open_findings int not null default 0,
   version int not null default 1,
   check (released_by is null or released_by <> submitted_by)
 );

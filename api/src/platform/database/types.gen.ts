@@ -56,6 +56,7 @@ export interface Authorisations {
 }
 
 export interface Batches {
+  aboveLimit: Generated<number>;
   calibrationId: Int8;
   colourStartedAt: Timestamp | null;
   draftId: string | null;
@@ -66,6 +67,8 @@ export interface Batches {
   number: string;
   openedAt: Generated<Timestamp>;
   openedBy: Int8;
+  openFindings: Generated<number>;
+  positionsRead: Generated<number>;
   releasedAt: Timestamp | null;
   releasedBy: Int8 | null;
   replicates: number;
@@ -120,6 +123,7 @@ export interface Calibrations {
   endedAt: Timestamp | null;
   id: Generated<Int8>;
   instrumentId: Int8;
+  justification: Generated<string>;
   methodId: Int8;
   model: string;
   note: Generated<string>;
