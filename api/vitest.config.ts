@@ -5,6 +5,7 @@ import { defineConfig } from 'vitest/config'
 const shared = {
   plugins: [
     swc.vite({
+      swcrc: false,
       jsc: {
         parser: { syntax: 'typescript', decorators: true },
         transform: { legacyDecorator: true, decoratorMetadata: true, useDefineForClassFields: false },
