@@ -184,6 +184,18 @@ export const methodDefinition = provenance.extend({
 })
 export type MethodDefinition = z.infer<typeof methodDefinition>
 
+/**
+ * What `methods.definition` holds in the database: the catalogue entry together with what it refers to, so that a
+ * method's row stands alone. The seeding command writes it; samples, calibrations and batches read it.
+ */
+export const methodRecord = methodDefinition.extend({
+  /** of the analyte, g/mol */
+  molarMass: z.number().positive(),
+  /** the rule that `holdTimeRule` names */
+  holdTime: holdTimeRuleDefinition,
+})
+export type MethodRecord = z.infer<typeof methodRecord>
+
 export const limitKind = z.enum([
   'mcl',
   'action-level',
