@@ -1,0 +1,87 @@
+import { useQueryClient } from '@tanstack/react-query'
+import { useEffect, useRef, useState, type FormEvent } from 'react'
+import { paths } from '../../../lib/paths'
+import { gaveUpSignIn, signedInAgain } from '../../../lib/re-sign-in'
+import { DoorField, formTexts } from '../../../ui/door'
+import { Strip } from '../../../ui/sheet'
+import { openSession } from '../api/session-api'
+import { refusalOf, type FieldErrors } from './field-errors'
+
+interface SignInDialogProps {
+  email: string
+  name: string
+}
+
+/** Over a page whose session has run out: the same person signs in again and goes on where they were. */
+export function SignInDialog({ email, name }: SignInDialogProps) {
+  const client = useQueryClient()
+  const dialog = useRef<HTMLDialogElement>(null)
+  const [errors, setErrors] = useState<FieldErrors>({})
+  const [isBusy, setBusy] = useState(false)
+
+  useEffect(() => {
+    const element = dialog.current
+    if (!element || element.open) return
+    element.showModal()
+    return () => element.close()
+  }, [])
+
+  const submit = async (event: FormEvent<HTMLFormElement>) => {
+    const password = formTexts(event)['password'] ?? ''
+    if (isBusy) return
+    if (password === '') return setErrors({ password: 'Enter your passphrase.' })
+    setBusy(true)
+    setErrors({})
+    try {
+      await openSession(client, { email, password })
+      signedInAgain()
+    } catch (error) {
+      setErrors(refusalOf(error, ['password']))
+    } finally {
+      setBusy(false)
+    }
+  }
+  const leave = () => {
+    gaveUpSignIn()
+    window.location.assign(paths.signIn)
+  }
+
+  return (
+    <dialog
+      ref={dialog}
+      className="ask"
+      aria-labelledby="ask-title"
+      // Escape would hide the only way on
+      onCancel={(event) => event.preventDefault()}
+    >
+      <h2 id="ask-title">Please sign in again</h2>
+      <p>
+        Your session has ended, {name}. Nothing you entered is lost: sign in and what you were doing is sent.
+      </p>
+      <form noValidate onSubmit={(event) => void submit(event)}>
+        {errors[''] && (
+          <Strip tone="above" isAlert>
+            {errors['']}
+          </Strip>
+        )}
+        <DoorField label="E-mail" name="email" type="email" value={email} readOnly autoComplete="username" />
+        <DoorField
+          label="Passphrase"
+          name="password"
+          type="password"
+          autoComplete="current-password"
+          autoFocus
+          error={errors['password']}
+        />
+        <div className="row">
+          <button type="button" className="button" onClick={leave} disabled={isBusy}>
+            Leave this page
+          </button>
+          <button type="submit" className="button main" disabled={isBusy}>
+            {isBusy ? 'Signing in…' : 'Sign in'}
+          </button>
+        </div>
+      </form>
+    </dialog>
+  )
+}

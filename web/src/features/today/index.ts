@@ -1,0 +1,2 @@
+export { todayQuery } from './api/today-api'
+export { TodayLines } from './components/today-lines'

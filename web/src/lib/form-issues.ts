@@ -1,0 +1,43 @@
+import type { FormInstance } from 'antd'
+import type { FieldProblem } from '@weirlight/shared/errors'
+
+export type NamePath = (string | number)[]
+
+/** `standards.2.readings.0` as antd names it: `['standards', 2, 'readings', 0]` */
+export function namePathOf(path: string): NamePath {
+  return path
+    .split('.')
+    .filter((step) => step !== '')
+    .map((step) => (/^\d+$/.test(step) ? Number(step) : step))
+}
+
+const keyOf = (path: NamePath) => path.join('.')
+
+/**
+ * Puts each complaint on the field that has its path, or on the nearest field above it. What belongs to no field
+ * comes back, to be said above the form.
+ */
+export function placeProblems(form: FormInstance, problems: readonly FieldProblem[]): string[] {
+  const known = new Map(
+    form.getFieldsError().map((field) => [keyOf(field.name as NamePath), field.name as NamePath]),
+  )
+  const placed = new Map<string, string[]>()
+  const homeless: string[] = []
+  for (const problem of problems) {
+    const path = namePathOf(problem.path)
+    while (path.length > 0 && !known.has(keyOf(path))) path.pop()
+    const key = keyOf(path)
+    if (path.length === 0) homeless.push(problem.message)
+    else placed.set(key, [...(placed.get(key) ?? []), problem.message])
+  }
+  form.setFields(
+    [...placed].flatMap(([key, errors]) => {
+      const name = known.get(key)
+      return name ? [{ name, errors }] : []
+    }),
+  )
+  const first = [...placed.keys()][0]
+  const firstName = first === undefined ? undefined : known.get(first)
+  if (firstName) form.scrollToField(firstName, { block: 'center', focus: true })
+  return homeless
+}

@@ -1,0 +1,2 @@
+export { Chart } from './chart'
+export { useChartColours, type ChartColours } from './use-chart-colours'

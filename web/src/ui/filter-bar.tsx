@@ -1,0 +1,86 @@
+import { useEffect, useState, type ReactNode } from 'react'
+
+/** The row of filters over a list. */
+export function FilterBar({ children, onClear }: { children: ReactNode; onClear?: () => void }) {
+  return (
+    <search className="filters no-print">
+      {children}
+      {onClear && (
+        <button type="button" className="button plain" onClick={onClear}>
+          Clear
+        </button>
+      )}
+    </search>
+  )
+}
+
+interface ControlProps {
+  label: string
+  value: string
+  onChange: (value: string) => void
+}
+
+export function FilterSelect(
+  props: ControlProps & { options: readonly { value: string; label: string }[]; allLabel?: string },
+) {
+  return (
+    <label>
+      {props.label}
+      <select className="field" value={props.value} onChange={(event) => props.onChange(event.target.value)}>
+        <option value="">{props.allLabel ?? 'All'}</option>
+        {props.options.map((option) => (
+          <option key={option.value} value={option.value}>
+            {option.label}
+          </option>
+        ))}
+      </select>
+    </label>
+  )
+}
+
+const PAUSE = 300
+
+/** Text filters by itself shortly after the last key, or at once with Enter. */
+export function FilterText({
+  label,
+  value,
+  onChange,
+  placeholder,
+  width = 150,
+}: ControlProps & { placeholder?: string; width?: number }) {
+  const [text, setText] = useState(value)
+  const [seen, setSeen] = useState(value)
+  if (seen !== value) {
+    // the filter was changed from elsewhere: cleared, or by the address
+    setSeen(value)
+    setText(value)
+  }
+  useEffect(() => {
+    if (text === value) return
+    const timer = setTimeout(() => onChange(text.trim()), PAUSE)
+    return () => clearTimeout(timer)
+  }, [text, value, onChange])
+  return (
+    <label>
+      {label}
+      <input
+        className="field"
+        type="search"
+        style={{ width }}
+        value={text}
+        placeholder={placeholder}
+        onChange={(event) => setText(event.target.value)}
+        onKeyDown={(event) => event.key === 'Enter' && onChange(text.trim())}
+      />
+    </label>
+  )
+}
+
+export function FilterDay({ label, value, onChange }: ControlProps) {
+  return (
+    <label>
+      {label}
+      <input className="field" type="date" value={value} onChange={(event) => onChange(event.target.value)} />
+    </label>
+  )
+}

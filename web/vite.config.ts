@@ -1,0 +1,43 @@
+import react from '@vitejs/plugin-react'
+import { defineConfig } from 'vitest/config'
+import { precompress } from './build/precompress'
+
+const conditions = ['source', 'module', 'browser', 'development|production']
+
+export default defineConfig({
+  plugins: [react(), precompress()],
+  resolve: { conditions },
+  server: {
+    // the API's address while developing; set by `npm run dev`
+    proxy: {
+      '/api': { target: process.env['WEIRLIGHT_API'] ?? 'http://127.0.0.1:3000', changeOrigin: false },
+    },
+  },
+  build: {
+    target: 'es2022',
+    sourcemap: false,
+    // no inlined data: addresses, so that the content security policy can stay at 'self'
+    assetsInlineLimit: 0,
+    modulePreload: { polyfill: false },
+    chunkSizeWarningLimit: 700,
+    rolldownOptions: {
+      output: {
+        codeSplitting: {
+          groups: [
+            {
+              name: 'react',
+              test: /node_modules[\\/](react|react-dom|scheduler|react-router|react-router-dom)[\\/]/,
+            },
+            { name: 'charts', test: /node_modules[\\/](echarts|zrender)[\\/]/ },
+          ],
+        },
+      },
+    },
+  },
+  test: {
+    environment: 'jsdom',
+    include: ['src/**/*.spec.{ts,tsx}'],
+    setupFiles: ['src/testing/set-up.ts'],
+    css: false,
+  },
+})
