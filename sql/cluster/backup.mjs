@@ -1,7 +1,7 @@
 // npm run backup -- --to <folder>: the whole database, certificates and history with it, in one file with its
 // SHA-256 beside it. Works while the product runs.
 
-import { existsSync, mkdirSync, renameSync, rmSync, statSync, writeFileSync } from 'node:fs'
+import { chmodSync, existsSync, mkdirSync, renameSync, rmSync, statSync, writeFileSync } from 'node:fs'
 import { basename, join, resolve } from 'node:path'
 import { readArguments } from './arguments.mjs'
 import { undoStack } from './launch.mjs'
@@ -51,6 +51,8 @@ const work = async () => {
     if (dump.code !== 0) throw new Refusal(`pg_dump failed:\n${dump.output}`)
     const list = await run(join(bin, 'pg_restore'), ['--list', unfinished])
     if (list.code !== 0) throw new Refusal(`The backup cannot be read back:\n${list.output}`)
+    // Whoever reads it has every client's results and every account's hash.
+    chmodSync(unfinished, 0o600)
     renameSync(unfinished, file)
   })
   const sum = await sha256Of(file)

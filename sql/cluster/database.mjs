@@ -1,4 +1,4 @@
-import { existsSync, readFileSync, rmSync, writeFileSync } from 'node:fs'
+import { chmodSync, existsSync, readFileSync, rmSync, writeFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { inRoot } from './paths.mjs'
 import { run } from './processes.mjs'
@@ -81,6 +81,8 @@ export const completeAccounts = (accountsFile, { url, mailUrl, databaseUrl }) =>
   const written = JSON.parse(readFileSync(accountsFile, 'utf8'))
   const accounts = Array.isArray(written) ? written : written.accounts
   const whole = { url, mailUrl, databaseUrl, accounts }
-  writeFileSync(accountsFile, `${JSON.stringify(whole, null, 2)}\n`, { mode: 0o600 })
+  writeFileSync(accountsFile, `${JSON.stringify(whole, null, 2)}\n`)
+  // It names a database and how to sign in to it.
+  chmodSync(accountsFile, 0o600)
   return accounts
 }

@@ -68,7 +68,7 @@ export const startProductOn = async (options) => {
   const mail = smtpUrl ? undefined : await step('Starting the mailbox', startMail)
   if (mail) undo.push(mail.stop)
 
-  const port = await freePort(ports.web)
+  const port = await freePort(...(ports.web ?? []))
   const url = `http://127.0.0.1:${port}`
   const api = await step('Starting the application', () =>
     apiService({

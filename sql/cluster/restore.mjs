@@ -1,12 +1,13 @@
 // npm run restore -- --from <file>: puts a backup into an empty database. Checks its SHA-256 first, says what it
 // is about to do, and does it only with --yes.
 
-import { existsSync, readFileSync } from 'node:fs'
+import { existsSync, readFileSync, rmSync } from 'node:fs'
 import { join, resolve } from 'node:path'
 import { readArguments } from './arguments.mjs'
 import { markRestored } from './database.mjs'
 import { undoStack } from './launch.mjs'
 import { borrowCluster, environmentOf, sha256Of } from './own-database.mjs'
+import { inData } from './paths.mjs'
 import { ensurePostgres } from './postgres.mjs'
 import { run } from './processes.mjs'
 import { Refusal, say, step } from './say.mjs'
@@ -39,7 +40,7 @@ const target = async () => {
     return {
       env,
       bin: (await ensurePostgres()).bin,
-      name: `${env.PGDATABASE} on ${env.PGHOST}:${env.PGPORT}`,
+      name: `the database ${env.PGDATABASE} on ${env.PGHOST}:${env.PGPORT}`,
     }
   }
   const { home, cluster, holder } = await borrowCluster({ command: 'npm run restore', undo })
@@ -53,10 +54,13 @@ const target = async () => {
   return {
     env,
     bin: cluster.bin,
-    name: "this checkout's own",
+    name: "this checkout's own database",
     prepare,
     isThere,
-    done: () => markRestored(home),
+    done: () => {
+      markRestored(home)
+      rmSync(inData('demo-accounts.json'), { force: true })
+    },
   }
 }
 
@@ -67,7 +71,7 @@ const demandEmpty = async ({ env, bin, name }) => {
   if (answer.code !== 0) throw new Refusal(`The database cannot be asked:\n${answer.output}`)
   if (answer.stdout.trim() === '0') return
   throw new Refusal(
-    `The database (${name}) is not empty, and a restore never writes over anything.\n` +
+    `A restore never writes over anything, and ${name} is not empty.\n` +
       'Make an empty one and name it in OWNER_DATABASE_URL, or restore in a fresh clone.',
   )
 }
@@ -82,7 +86,7 @@ const work = async () => {
   if (to.isThere !== false) await demandEmpty({ ...to, env })
 
   say(`\n  From   ${file} (SHA-256 ${sum}, as recorded)`)
-  say(`  Into   the database ${to.name}, which is empty`)
+  say(`  Into   ${to.name}, which is empty`)
   if (!yes) {
     say('\nNothing was done. Add --yes to do it.')
     return 0

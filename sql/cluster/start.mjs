@@ -3,10 +3,11 @@
 import { migrate } from './database.mjs'
 import { prepare, startProductOn, undoStack } from './launch.mjs'
 import { takeLock } from './lock.mjs'
+import { demandNode } from './packages.mjs'
 import { inData } from './paths.mjs'
 import { checkoutHome } from './places.mjs'
 import { isPortFree } from './ports.mjs'
-import { startCluster } from './postgres.mjs'
+import { ensurePostgres, startCluster } from './postgres.mjs'
 import { bold, green, quiet, Refusal, say, seconds, step, warn } from './say.mjs'
 import { apiService } from './services.mjs'
 import { runToEnd } from './signals.mjs'
@@ -54,6 +55,9 @@ const startOwn = async () => {
   const port = wishedPort()
   const lock = takeLock('npm start')
   undo.push(lock.release)
+  // First what may need rights that the reader lacks, then what takes long.
+  demandNode()
+  await ensurePostgres()
   await prepare()
   const watchdog = startWatchdog()
   const { onDeath, death } = deathWatch()
@@ -73,7 +77,7 @@ const startOwn = async () => {
     watchdog,
     onDeath,
     smtpUrl: SMTP_URL,
-    ports: { web: port, smtp: 1025, mailbox: 1080 },
+    ports: { web: [port, port + 1, port + 2, port + 3], smtp: 1025, mailbox: 1080 },
     apiEnv: { ...(PUBLIC_URL && { PUBLIC_URL }), ...(SESSION_SECRET && { SESSION_SECRET }) },
   })
   lock.note({ url: product.url, mailUrl: product.mailUrl, databaseName: product.databaseName })
