@@ -16,7 +16,7 @@ const shared = {
     }),
   ],
   resolve: { conditions: ['source'] },
-  ssr: { resolve: { conditions: ['source', 'node', 'import', 'module', 'default'] } },
+  ssr: { resolve: { conditions: ['source'] } },
 }
 
 export default defineConfig({

@@ -1,8 +1,17 @@
 import { Module, type DynamicModule } from '@nestjs/common'
+import { HistoryModule } from './modules/history/index.js'
+import { LaboratoryModule } from './modules/laboratory/index.js'
+import { UsersModule } from './modules/users/index.js'
+import { EventsModule } from './platform/events/events.module.js'
 import { PlatformModule, type PlatformOptions } from './platform/platform.module.js'
 
 /** Every feature, lower levels first. */
-export const FEATURES: NonNullable<DynamicModule['imports']> = []
+export const FEATURES: NonNullable<DynamicModule['imports']> = [
+  EventsModule,
+  HistoryModule,
+  LaboratoryModule,
+  UsersModule,
+]
 
 @Module({})
 export class AppModule {

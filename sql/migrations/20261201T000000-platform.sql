@@ -142,12 +142,19 @@ begin
   return made;
 end $$;
 
--- Secrets are never copied into history; that they changed is.
-create function history_hide_secrets(row_values jsonb) returns jsonb language sql immutable as $$
-  select coalesce(jsonb_object_agg(key,
-    case when value <> 'null'::jsonb and key ~ '(password|passphrase|token|secret)(_hash)?$' then '"(hidden)"'::jsonb
-         else value end), '{}'::jsonb)
-  from jsonb_each(row_values)
+-- Secrets are never copied into history; that they changed is. Of a file, its length and hash are kept.
+create function history_plain(key text, value jsonb) returns jsonb language sql immutable as $$
+  select case
+    when value = 'null'::jsonb then value
+    when key ~ '(password|passphrase|token|secret)(_hash)?$' then '"(hidden)"'::jsonb
+    when jsonb_typeof(value) = 'string' and length(value #>> '{}') > 20000 then
+      to_jsonb(format('(%s characters, SHA-256 %s)', length(value #>> '{}'),
+        encode(sha256(convert_to(value #>> '{}', 'UTF8')), 'hex')))
+    else value end
+$$;
+
+create function history_plain(row_values jsonb) returns jsonb language sql immutable as $$
+  select jsonb_object_agg(key, history_plain(key, value)) from jsonb_each(row_values)
 $$;
 
 create function write_history() returns trigger language plpgsql
@@ -185,8 +192,8 @@ begin
     row_now ->> 'number',
     case when tg_table_name = 'clients' then (row_now ->> 'id')::bigint else (row_now ->> 'client_id')::bigint end,
     lower(tg_op),
-    history_hide_secrets(before),
-    history_hide_secrets(after));
+    history_plain(before),
+    history_plain(after));
   return null;
 end $$;
 

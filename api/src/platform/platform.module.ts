@@ -1,5 +1,13 @@
 import { Global, Module, type DynamicModule, type Provider } from '@nestjs/common'
-import { APP_FILTER, APP_GUARD, APP_INTERCEPTOR, DiscoveryModule, DiscoveryService, MetadataScanner, Reflector } from '@nestjs/core'
+import {
+  APP_FILTER,
+  APP_GUARD,
+  APP_INTERCEPTOR,
+  DiscoveryModule,
+  DiscoveryService,
+  MetadataScanner,
+  Reflector,
+} from '@nestjs/core'
 import { Clock } from './clock/clock.js'
 import { SettingsModule } from './config/settings.module.js'
 import { Settings, type SettingsValues } from './config/settings.js'
@@ -61,7 +69,8 @@ export class PlatformModule {
       {
         provide: JobsService,
         inject: [JobHandlers, Settings],
-        useFactory: (handlers: JobHandlers, settings: Settings) => new JobsService(handlers, options, settings),
+        useFactory: (handlers: JobHandlers, settings: Settings) =>
+          new JobsService(handlers, options, settings),
       },
       {
         provide: RouteCheck,
@@ -71,7 +80,10 @@ export class PlatformModule {
           scanner: MetadataScanner,
           reflector: Reflector,
           settings: Settings,
-        ) => new RouteCheck(discovery, scanner, reflector, { isStrict: options.isStrict && !settings.isPartial }),
+        ) =>
+          new RouteCheck(discovery, scanner, reflector, {
+            isStrict: options.isStrict && !settings.isPartial,
+          }),
       },
     ]
     return {

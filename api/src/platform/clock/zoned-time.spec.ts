@@ -26,10 +26,15 @@ describe('a time as people write it', () => {
     expect(at('2026-10-25 02:30', 'Europe/Vienna')).toBe('twice')
     expect(at('2026-10-25 02:30+02:00', 'Europe/Vienna')).toBe('2026-10-25T00:30:00.000Z')
   })
-  it.each(['', '1.12.2026 14:05', '2026-02-31 10:00', '2026-12-01 24:30', '2026-12-01', 'yesterday', '2026-13-01 10:00'])(
-    '“%s” is not read',
-    (text) => expect(at(text, 'UTC')).toBe('unreadable'),
-  )
+  it.each([
+    '',
+    '1.12.2026 14:05',
+    '2026-02-31 10:00',
+    '2026-12-01 24:30',
+    '2026-12-01',
+    'yesterday',
+    '2026-13-01 10:00',
+  ])('“%s” is not read', (text) => expect(at(text, 'UTC')).toBe('unreadable'))
   it('shows the wall clock of the zone', () => {
     expect(showTime(new Date('2026-12-31T23:30:00Z'), 'Europe/Vienna')).toBe('2027-01-01 00:30')
     expect(showDay(new Date('2026-12-31T23:30:00Z'), 'America/Chicago')).toBe('2026-12-31')

@@ -59,7 +59,11 @@ function formatOf(zone: string): Intl.DateTimeFormat {
 }
 
 function partsAt(at: number, zone: string): Record<string, string> {
-  return Object.fromEntries(formatOf(zone).formatToParts(at).map(({ type, value }) => [type, value]))
+  return Object.fromEntries(
+    formatOf(zone)
+      .formatToParts(at)
+      .map(({ type, value }) => [type, value]),
+  )
 }
 
 function offsetAt(at: number, zone: string): number {

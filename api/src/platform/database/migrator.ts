@@ -10,8 +10,6 @@ import { openPool } from './pool.js'
 /** sql/migrations, both from src/platform/database and from dist/platform/database */
 export const MIGRATIONS = join(dirname(fileURLToPath(import.meta.url)), '../../../../sql/migrations')
 
-
-
 interface MigrationFile {
   name: string
   text: string
@@ -61,7 +59,9 @@ async function checkRoles(db: Kysely<unknown>, appRole: string): Promise<void> {
         from pg_roles where rolname = ${appRole}), false) as powerful`.execute(db)
   const row = rows[0]
   if (!row?.known) {
-    throw new Error(`The application's role “${appRole}” does not exist. Create it first: create role ${appRole} login`)
+    throw new Error(
+      `The application's role “${appRole}” does not exist. Create it first: create role ${appRole} login`,
+    )
   }
   if (row.powerful) {
     throw new Error(
@@ -88,7 +88,9 @@ async function runMigrator(db: Kysely<unknown>, files: MigrationFile[]): Promise
     migrations[file.name] = {
       up: async (trx) => {
         await sql.raw(file.text).execute(trx)
-        await sql`insert into migration_checksums (name, sha256) values (${file.name}, ${file.sha256})`.execute(trx)
+        await sql`insert into migration_checksums (name, sha256) values (${file.name}, ${file.sha256})`.execute(
+          trx,
+        )
       },
     }
   }

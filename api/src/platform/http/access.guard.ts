@@ -22,11 +22,15 @@ export class AccessGuard implements CanActivate {
     const request = context.switchToHttp().getRequest<FastifyRequest>()
     assertSameSite(request, this.settings.publicUrl)
     const contract = this.reflector.get<Contract | undefined>(CONTRACT, context.getHandler())
-    if (!contract) throw new ProblemError('forbidden', 'This address declares no permission, so nobody may use it.')
+    if (!contract)
+      throw new ProblemError('forbidden', 'This address declares no permission, so nobody may use it.')
     request.actor = await this.sessions.actorOf(request)
     if (contract.permission === 'public') return true
     if (!request.actor) {
-      throw new ProblemError('signed-out', 'You are signed out. Sign in again; what you typed is still on the page.')
+      throw new ProblemError(
+        'signed-out',
+        'You are signed out. Sign in again; what you typed is still on the page.',
+      )
     }
     if (contract.permission === 'signed-in') return true
     if (!can(request.actor, contract.permission)) {

@@ -14,7 +14,10 @@ export interface FileAnswer {
 export function contentDisposition(filename: string, isInline = false): string {
   const clean = filename.replaceAll(/[\p{Cc}/\\]/gu, '_')
   const plain = clean.replaceAll(/[^\x20-\x7e]|["%]/g, '_')
-  const encoded = encodeURIComponent(clean).replaceAll(/['()*]/g, (c) => `%${c.charCodeAt(0).toString(16).toUpperCase()}`)
+  const encoded = encodeURIComponent(clean).replaceAll(
+    /['()*]/g,
+    (c) => `%${c.charCodeAt(0).toString(16).toUpperCase()}`,
+  )
   return `${isInline ? 'inline' : 'attachment'}; filename="${plain}"; filename*=UTF-8''${encoded}`
 }
 

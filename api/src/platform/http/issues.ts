@@ -5,7 +5,10 @@ import type { z } from 'zod'
 export function toFieldProblems(issues: readonly z.core.$ZodIssue[]): FieldProblem[] {
   return issues.flatMap((issue) => {
     if (issue.code === 'unrecognized_keys') {
-      return issue.keys.map((key) => ({ path: [...issue.path, key].join('.'), message: 'This entry is not known here.' }))
+      return issue.keys.map((key) => ({
+        path: [...issue.path, key].join('.'),
+        message: 'This entry is not known here.',
+      }))
     }
     return [{ path: issue.path.join('.'), message: sentence(issue) }]
   })

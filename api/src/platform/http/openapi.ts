@@ -17,7 +17,8 @@ export function openApiDocument(contracts: readonly Endpoint[] = endpoints): Ope
     info: {
       title: 'Weirlight',
       version: '1',
-      description: 'Changing requests carry the header x-weirlight: 1. Refusals are RFC 9457 problem documents.',
+      description:
+        'Changing requests carry the header x-weirlight: 1. Refusals are RFC 9457 problem documents.',
     },
     paths,
     components: {
@@ -29,7 +30,11 @@ export function openApiDocument(contracts: readonly Endpoint[] = endpoints): Ope
 }
 
 function schemaOf(schema: z.ZodType, io: 'input' | 'output'): Json {
-  const { $schema: _, ...json } = z.toJSONSchema(schema, { io, unrepresentable: 'any', reused: 'inline' }) as Json
+  const { $schema: _, ...json } = z.toJSONSchema(schema, {
+    io,
+    unrepresentable: 'any',
+    reused: 'inline',
+  }) as Json
   return json
 }
 
@@ -47,7 +52,11 @@ function parametersOf(schema: z.ZodType | undefined, place: 'path' | 'query'): J
 
 function bodyOf(contract: Endpoint): Json {
   if (contract.upload) {
-    const file = { type: 'object', required: ['file'], properties: { file: { type: 'string', format: 'binary' } } }
+    const file = {
+      type: 'object',
+      required: ['file'],
+      properties: { file: { type: 'string', format: 'binary' } },
+    }
     return { requestBody: { required: true, content: { 'multipart/form-data': { schema: file } } } }
   }
   if (!contract.body) return {}

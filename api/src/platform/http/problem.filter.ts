@@ -19,7 +19,8 @@ export class ProblemFilter implements ExceptionFilter {
     const requestId = String(request.id)
     if (problem.status >= 500) this.logger.error({ err: error, requestId }, problem.detail)
     if (reply.sent) return
-    if (problem.retryAfterSeconds !== undefined) void reply.header('retry-after', String(problem.retryAfterSeconds))
+    if (problem.retryAfterSeconds !== undefined)
+      void reply.header('retry-after', String(problem.retryAfterSeconds))
     void reply
       .status(problem.status)
       .header('content-type', 'application/problem+json; charset=utf-8')
@@ -40,9 +41,13 @@ export function problemOf(error: unknown): ProblemError {
   if (fromPostgres) return fromPostgres
   const status = statusOf(error)
   if (status !== undefined && status < 500) return problemOfHttp(status, error)
-  return new ProblemError('internal', 'Something went wrong on our side. Nothing was changed. Give the request id to the administrator.', {
-    cause: error,
-  })
+  return new ProblemError(
+    'internal',
+    'Something went wrong on our side. Nothing was changed. Give the request id to the administrator.',
+    {
+      cause: error,
+    },
+  )
 }
 
 function statusOf(error: unknown): number | undefined {
@@ -63,6 +68,10 @@ const BY_STATUS: Record<number, [ProblemCode, string]> = {
 }
 
 function problemOfHttp(status: number, cause: unknown): ProblemError {
-  const [code, detail] = BY_STATUS[status] ?? (status < 500 ? ['invalid-input', 'The request could not be read.'] : ['internal', 'Something went wrong on our side.'])
+  const [code, detail] =
+    BY_STATUS[status] ??
+    (status < 500
+      ? ['invalid-input', 'The request could not be read.']
+      : ['internal', 'Something went wrong on our side.'])
   return new ProblemError(code as ProblemCode, detail as string, { cause })
 }

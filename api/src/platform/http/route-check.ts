@@ -28,7 +28,9 @@ export class RouteCheck implements OnApplicationBootstrap {
     const known = new Set(endpoints.map(({ name }) => name))
     const problems = [
       ...[...count].filter(([, n]) => n > 1).map(([name]) => `${name} has more than one route`),
-      ...[...count].filter(([name]) => !known.has(name)).map(([name]) => `${name} is not listed in endpoints`),
+      ...[...count]
+        .filter(([name]) => !known.has(name))
+        .map(([name]) => `${name} is not listed in endpoints`),
       ...endpoints.filter(({ name }) => !count.has(name)).map(({ name }) => `${name} has no route`),
     ]
     if (problems.length === 0) return
@@ -50,7 +52,9 @@ export class RouteCheck implements OnApplicationBootstrap {
         if (contract) served.push(contract)
         else {
           const verb = RequestMethod[Reflect.getMetadata(METHOD_METADATA, method) as number] ?? ''
-          undeclared.push(`${wrapper.name}.${name} (${verb} ${String(Reflect.getMetadata(PATH_METADATA, method))})`)
+          undeclared.push(
+            `${wrapper.name}.${name} (${verb} ${String(Reflect.getMetadata(PATH_METADATA, method))})`,
+          )
         }
       }
     }

@@ -11,7 +11,8 @@ export function assertSameSite(request: FastifyRequest, publicUrl: string): void
   if (SAFE.has(request.method)) return
   if (request.headers['x-weirlight'] !== '1') throw refusal('The header x-weirlight: 1 is missing.')
   const site = request.headers['sec-fetch-site']
-  if (site !== undefined && site !== 'same-origin' && site !== 'none') throw refusal('It came from another site.')
+  if (site !== undefined && site !== 'same-origin' && site !== 'none')
+    throw refusal('It came from another site.')
   const { origin } = request.headers
   if (origin !== undefined && !isOwnOrigin(origin, publicUrl, request.host)) {
     throw refusal('It came from another site.')

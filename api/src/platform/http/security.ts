@@ -54,6 +54,13 @@ export async function registerSecurity(fastify: FastifyInstance, settings: Setti
   }
   await fastify.register(multipart, {
     throwFileSizeLimit: false,
-    limits: { files: 1, fields: 10, fieldSize: 10_000, fieldNameSize: 100, headerPairs: 50, fileSize: LIMITS.uploadBytes + 1 },
+    limits: {
+      files: 1,
+      fields: 10,
+      fieldSize: 10_000,
+      fieldNameSize: 100,
+      headerPairs: 50,
+      fileSize: LIMITS.uploadBytes + 1,
+    },
   })
 }

@@ -29,7 +29,8 @@ export async function registerWebFiles(fastify: FastifyInstance, webDist: string
   fastify.get('/*', (request, reply) => {
     const path = request.url.split('?', 1)[0] ?? '/'
     // a missing file or API address is an error, not the page
-    if (path.startsWith('/api/') || path === '/api' || path.startsWith('/assets/')) return reply.callNotFound()
+    if (path.startsWith('/api/') || path === '/api' || path.startsWith('/assets/'))
+      return reply.callNotFound()
     const nonce = randomBytes(16).toString('base64')
     return reply
       .header('content-security-policy', contentSecurityPolicy(html.includes(NONCE) ? nonce : undefined))

@@ -29,7 +29,8 @@ export function defineJob<D>(job: {
   concurrency?: number
   schedule?: string
 }): Job<D> {
-  if (!/^[a-z][a-z-]*(\.[a-z][a-z-]*)+$/.test(job.name)) throw new Error(`“${job.name}” is no name for a job.`)
+  if (!/^[a-z][a-z-]*(\.[a-z][a-z-]*)+$/.test(job.name))
+    throw new Error(`“${job.name}” is no name for a job.`)
   if (declared.has(job.name)) throw new Error(`The job ${job.name} is declared twice.`)
   const whole: Job<D> = {
     retryLimit: 8,

@@ -1,4 +1,9 @@
-import { Injectable, Logger, type BeforeApplicationShutdown, type OnApplicationBootstrap } from '@nestjs/common'
+import {
+  Injectable,
+  Logger,
+  type BeforeApplicationShutdown,
+  type OnApplicationBootstrap,
+} from '@nestjs/common'
 import { CompiledQuery, sql } from 'kysely'
 import PgBoss from 'pg-boss'
 import { Settings } from '../config/settings.js'
@@ -88,7 +93,8 @@ export class JobsService implements OnApplicationBootstrap, BeforeApplicationShu
     for (const handler of found) await this.work(handler)
     await this.bell.start()
     for (const { job } of found) {
-      if (job.schedule !== undefined) await this.boss.schedule(job.name, job.schedule, { job: job.name, input: {} })
+      if (job.schedule !== undefined)
+        await this.boss.schedule(job.name, job.schedule, { job: job.name, input: {} })
     }
   }
 
@@ -131,7 +137,11 @@ export class JobsService implements OnApplicationBootstrap, BeforeApplicationShu
     for (let n = 0; n < job.concurrency; n += 1) {
       const workerId = await this.boss.work<Envelope>(
         job.name,
-        { batchSize: 1, pollingIntervalSeconds: this.settings.environment === 'test' ? 0.5 : 5, includeMetadata: true },
+        {
+          batchSize: 1,
+          pollingIntervalSeconds: this.settings.environment === 'test' ? 0.5 : 5,
+          includeMetadata: true,
+        },
         async (batch: PgBoss.JobWithMetadata<Envelope>[]) => {
           for (const one of batch) await this.runOne({ job, run }, one)
         },

@@ -35,7 +35,9 @@ export class MailSender {
     const row = await this.db.unwatched((trx) => this.messages.claim(trx, id))
     if (!row) return
     try {
-      const attachments = await Promise.all(references.parse(row.attachments).map((one) => this.mail.load(one)))
+      const attachments = await Promise.all(
+        references.parse(row.attachments).map((one) => this.mail.load(one)),
+      )
       await this.transport.send({
         messageId: row.messageId,
         to: row.recipient,

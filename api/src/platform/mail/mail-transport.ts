@@ -29,7 +29,9 @@ export class MailTransport implements OnApplicationShutdown {
       host: hostname.replaceAll(/^\[|\]$/g, ''),
       port: port === '' ? (protocol === 'smtps:' ? 465 : 25) : Number(port),
       secure: protocol === 'smtps:',
-      ...(username ? { auth: { user: decodeURIComponent(username), pass: decodeURIComponent(password) } } : {}),
+      ...(username
+        ? { auth: { user: decodeURIComponent(username), pass: decodeURIComponent(password) } }
+        : {}),
       // all together shorter than the lease of a claimed message
       connectionTimeout: 10_000,
       greetingTimeout: 10_000,

@@ -54,7 +54,9 @@ export class MailRepository {
   }
 
   async markSent(trx: Trx, row: MailRow): Promise<void> {
-    await this.claimed(trx, row).set({ state: 'sent', sentAt: sql<Date>`now()`, lastError: null }).execute()
+    await this.claimed(trx, row)
+      .set({ state: 'sent', sentAt: sql<Date>`now()`, lastError: null })
+      .execute()
   }
 
   async markWaiting(trx: Trx, row: MailRow, again: { afterSeconds: number; error: string }): Promise<void> {
@@ -69,14 +71,22 @@ export class MailRepository {
   }
 
   async markFailed(trx: Trx, row: MailRow, error: string): Promise<void> {
-    await this.claimed(trx, row).set({ state: 'failed', lastError: error, failedAt: sql<Date>`now()` }).execute()
+    await this.claimed(trx, row)
+      .set({ state: 'failed', lastError: error, failedAt: sql<Date>`now()` })
+      .execute()
   }
 
   /** Puts a failed or waiting message first in line again. */
   async retry(trx: Trx, id: string): Promise<MailRow | undefined> {
     return trx
       .updateTable('mailMessages')
-      .set({ state: 'waiting', attempts: 0, nextAttemptAt: sql<Date>`now()`, claimedAt: null, failedAt: null })
+      .set({
+        state: 'waiting',
+        attempts: 0,
+        nextAttemptAt: sql<Date>`now()`,
+        claimedAt: null,
+        failedAt: null,
+      })
       .where('id', '=', id)
       .where('state', 'in', ['failed', 'waiting'])
       .returningAll()

@@ -12,7 +12,12 @@ export async function registerSessions(
 ): Promise<void> {
   // connect-pg-simple was written for another server; all it takes from it is the class to extend
   const Store = connectPgSimple({ Store: session.Store } as unknown as Parameters<typeof connectPgSimple>[0])
-  const store = new Store({ pool, tableName: 'sessions', createTableIfMissing: false, pruneSessionInterval: 15 * 60 })
+  const store = new Store({
+    pool,
+    tableName: 'sessions',
+    createTableIfMissing: false,
+    pruneSessionInterval: 15 * 60,
+  })
   await fastify.register(cookie)
   await fastify.register(session, {
     secret: settings.sessionSecret,

@@ -27,10 +27,7 @@ export class SignInAttemptsRepository {
     return rows[0] ?? { pair: 0, account: 0, address: 0, secondsLeft: 0 }
   }
 
-  async insert(
-    trx: Trx,
-    row: { accountHash: string; address: string; succeeded: boolean },
-  ): Promise<void> {
+  async insert(trx: Trx, row: { accountHash: string; address: string; succeeded: boolean }): Promise<void> {
     await trx.insertInto('signInAttempts').values(row).execute()
   }
 

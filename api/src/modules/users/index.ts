@@ -1,0 +1,7 @@
+export { UsersModule } from './users.module.js'
+export { UsersService } from './users.service.js'
+export { SigningService, type SignatureView, type ToSign } from './signing.service.js'
+export type { Meaning, SignedThing } from './signatures.repository.js'
+export { AuthorisationService } from './authorisation.service.js'
+export type { AuthorisedActivity } from './authorisations.repository.js'
+export { PassphraseHasher } from './passphrase-hasher.js'

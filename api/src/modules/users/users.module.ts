@@ -1,0 +1,40 @@
+import { Module } from '@nestjs/common'
+import { HistoryModule } from '../history/index.js'
+import { LaboratoryModule } from '../laboratory/index.js'
+import { AuthorisationService } from './authorisation.service.js'
+import { AuthorisationsRepository } from './authorisations.repository.js'
+import { InvitationsService } from './invitations.service.js'
+import { LinksService } from './links.service.js'
+import { PassphraseHasher } from './passphrase-hasher.js'
+import { PassphrasePolicy } from './passphrase-policy.js'
+import { PassphraseStrategy } from './passphrase.strategy.js'
+import { SessionController } from './session.controller.js'
+import { SignInService } from './sign-in.service.js'
+import { SignaturesRepository } from './signatures.repository.js'
+import { SigningService } from './signing.service.js'
+import { TokensRepository } from './tokens.repository.js'
+import { UsersController } from './users.controller.js'
+import { UsersRepository } from './users.repository.js'
+import { UsersService } from './users.service.js'
+
+@Module({
+  imports: [HistoryModule, LaboratoryModule],
+  controllers: [SessionController, UsersController],
+  providers: [
+    UsersRepository,
+    TokensRepository,
+    AuthorisationsRepository,
+    SignaturesRepository,
+    PassphraseHasher,
+    PassphrasePolicy,
+    PassphraseStrategy,
+    LinksService,
+    SignInService,
+    InvitationsService,
+    UsersService,
+    SigningService,
+    AuthorisationService,
+  ],
+  exports: [SigningService, AuthorisationService, UsersService, PassphraseHasher],
+})
+export class UsersModule {}
