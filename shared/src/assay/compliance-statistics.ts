@@ -102,6 +102,9 @@ function readQuarters(input: RunningAnnualAverageInput): Quarter[] {
   const seen = new Set<string>()
   const quarters = Array.from(requireArray(input.quarters, 'quarters'), (entry, index) => {
     requireObject(entry, 'quarter')
+    if (typeof entry.quarter !== 'string' && typeof entry.quarter !== 'number') {
+      throw new AssayError('invalid-argument', 'Name each quarter, for example 2026-Q1.', index)
+    }
     const label = String(entry.quarter)
     if (seen.has(label))
       throw new AssayError('invalid-argument', `The quarter ${label} stands there twice.`, index)

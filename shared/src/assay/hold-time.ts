@@ -19,9 +19,9 @@ export interface HoldTimeRule {
   conditions?: readonly {
     preservation: string
     hours: number
-    minPH?: number
-    maxPH?: number
-    maxTemperatureC?: number
+    minPH?: number | undefined
+    maxPH?: number | undefined
+    maxTemperatureC?: number | undefined
   }[]
   /** how long before the end the state turns to 'soon'; a quarter of the time, at most a week, when left out */
   soonWithinHours?: number | undefined
@@ -49,23 +49,26 @@ function readInstant(value: unknown, what: string): number {
 }
 
 /** A condition asks for evidence: what was not measured does not count as met. */
+function isWithin(measured: unknown, range: { low: unknown; high: unknown; what: string }): boolean {
+  const low = range.low === undefined ? null : requireFinite(range.low, range.what)
+  const high = range.high === undefined ? null : requireFinite(range.high, range.what)
+  if (low === null && high === null) return true
+  if (measured === null || measured === undefined) return false
+  const value = requireFinite(measured, range.what)
+  return (low === null || value >= low) && (high === null || value <= high)
+}
+
 function hoursFor(rule: HoldTimeRule, preservation: Preservation): { hours: number; because: string } {
-  const kept = typeof preservation === 'string' ? { kind: preservation } : preservation
+  const kept: Exclude<Preservation, string> =
+    typeof preservation === 'string' ? { kind: preservation } : preservation
   let best = { hours: requirePositive(rule.hours, 'holding time'), because: 'the rule without conditions' }
   for (const condition of requireArray(rule.conditions ?? [], 'conditions of the holding time')) {
     requireObject(condition, 'condition of the holding time')
     const hours = requirePositive(condition.hours, 'holding time')
     if (condition.preservation !== kept.kind || hours <= best.hours) continue
-    const pH = kept.pH ?? null
-    const temperature = kept.temperatureC ?? null
-    if (condition.minPH !== undefined && (pH === null || pH < condition.minPH)) continue
-    if (condition.maxPH !== undefined && (pH === null || pH > condition.maxPH)) continue
-    if (
-      condition.maxTemperatureC !== undefined &&
-      (temperature === null || temperature > condition.maxTemperatureC)
-    ) {
-      continue
-    }
+    const { minPH, maxPH, maxTemperatureC } = condition
+    if (!isWithin(kept.pH, { low: minPH, high: maxPH, what: 'pH' })) continue
+    if (!isWithin(kept.temperatureC, { low: undefined, high: maxTemperatureC, what: 'temperature' })) continue
     best = { hours, because: `preserved: ${condition.preservation}` }
   }
   return best
