@@ -1,6 +1,6 @@
 import react from '@vitejs/plugin-react'
 import { defineConfig } from 'vitest/config'
-import { precompress } from './build/precompress'
+import { precompress } from './build/precompress.ts'
 
 const conditions = ['source', 'module', 'browser', 'development|production']
 

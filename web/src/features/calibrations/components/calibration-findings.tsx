@@ -1,0 +1,91 @@
+import type { Criterion, MethodDefinition } from '@weirlight/shared/contracts'
+import type { StoredFit } from '@weirlight/shared/worksheet'
+import { Box, Criteria, KeyValues, StatusTag } from '../../../ui'
+import type { DraftAssessment } from '../draft/calibration-draft'
+import { decimals, significant, thousands, withError } from '../draft/number-texts'
+import './calibrations.css'
+
+interface FindingsProps {
+  stored: StoredFit | null
+  criteria: readonly Criterion[]
+  diagnosis: DraftAssessment['diagnosis']
+  refusal: string | null
+  definition: MethodDefinition
+}
+
+const DIAGNOSIS_MARKS = {
+  'as-expected': { word: 'as expected', shape: 'disc', tone: 'meets' },
+  low: { word: 'low', shape: 'diamond', tone: 'caution' },
+  high: { word: 'high', shape: 'diamond', tone: 'caution' },
+} as const
+
+/** The line, what the complex itself says of it, and the criteria of the method. */
+export function CalibrationFindings({ stored, criteria, diagnosis, refusal, definition }: FindingsProps) {
+  if (!stored) {
+    return (
+      <Box title="The line">
+        <p className="quiet" aria-live="polite">
+          {refusal ?? 'The line appears here as the readings are typed.'}
+        </p>
+      </Box>
+    )
+  }
+  return (
+    <>
+      <LineBox stored={stored} />
+      <Box title="Against the complex itself">
+        {stored.molarAbsorptivity !== null && (
+          <p>
+            ε from this slope <strong>{thousands(stored.molarAbsorptivity, 4)}</strong> L mol⁻¹ cm⁻¹
+          </p>
+        )}
+        <p className="quiet">
+          Published: {thousands(definition.molarAbsorptivity.value, 4)} ({definition.molarAbsorptivity.source},{' '}
+          {definition.molarAbsorptivity.date})
+        </p>
+        {diagnosis && (
+          <p className="verdict-line">
+            <StatusTag mark={DIAGNOSIS_MARKS[diagnosis.verdict]}>{diagnosis.explanation}</StatusTag>
+          </p>
+        )}
+      </Box>
+      <Box title="Criteria of the method">
+        <Criteria items={criteria} />
+      </Box>
+    </>
+  )
+}
+
+function LineBox({ stored }: { stored: StoredFit }) {
+  const curvature = (stored.fit['coefficients'] as number[] | undefined)?.[2]
+  const curvatureError = (stored.fit['standardErrors'] as number[] | undefined)?.[2]
+  return (
+    <Box title={curvature === undefined ? 'The line' : 'The curve'}>
+      <KeyValues
+        items={[
+          { term: 'Slope, A per mg/L', detail: withError(stored.slope, stored.slopeError) },
+          curvature !== undefined && {
+            term: 'Curvature, A per (mg/L)²',
+            detail: withError(curvature, curvatureError ?? 0),
+          },
+          { term: 'Intercept, A', detail: withError(stored.intercept, stored.interceptError) },
+          { term: 'Residual sd, A', detail: significant(stored.residualStandardDeviation, 3) },
+          { term: 'r', detail: decimals(stored.correlation, 6) },
+          { term: 'r²', detail: decimals(stored.rSquared, 6) },
+          {
+            term: 'Detection limit',
+            detail: stored.detectionLimit === null ? 'not calculable' : `${significant(stored.detectionLimit, 2)} mg/L`,
+          },
+          {
+            term: 'Quantification limit',
+            detail:
+              stored.quantificationLimit === null
+                ? 'not calculable'
+                : `${significant(stored.quantificationLimit, 2)} mg/L`,
+          },
+        ]}
+      />
+      <p className="note">Limits by DIN 32645 from the curve, engine {stored.engineVersion}.</p>
+    </Box>
+  )
+}
