@@ -97,6 +97,16 @@ export const changeUser = defineEndpoint({
   body: z.object({ version, ...account, reason: note.optional() }).superRefine(clientFits),
   response: userView,
 })
+export const startPassphraseReset = defineEndpoint({
+  name: 'startPassphraseReset',
+  summary: 'Mail a person a link to choose a new passphrase',
+  method: 'POST',
+  path: '/users/:id/start-reset',
+  permission: 'users.manage',
+  params: idParams,
+  body: versionedReason,
+  response: userView,
+})
 export const disableUser = defineEndpoint({
   name: 'disableUser',
   summary: 'Disable an account and end its sessions',
@@ -143,6 +153,7 @@ export const userEndpoints = [
   inviteUser,
   inviteUserAgain,
   changeUser,
+  startPassphraseReset,
   disableUser,
   enableUser,
   authoriseUser,

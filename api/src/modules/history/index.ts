@@ -1,2 +1,1 @@
 export { HistoryModule } from './history.module.js'
-export { VersionCheck, type Versioned } from './version-check.js'

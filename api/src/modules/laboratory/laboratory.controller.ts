@@ -1,7 +1,7 @@
 import { Controller } from '@nestjs/common'
 import { changeLaboratory, getLaboratory } from '@weirlight/shared/contracts'
 import type { Actor } from '@weirlight/shared/permissions'
-import { CurrentActor, Endpoint, Input, type InputOf } from '../../platform/http/endpoint.decorator.js'
+import { CurrentActor, Endpoint, Input, type InputOf } from '../../platform/index.js'
 import { LaboratoryService } from './laboratory.service.js'
 
 @Controller()

@@ -1,11 +1,9 @@
 import { Module } from '@nestjs/common'
-import { HistoryModule } from '../history/index.js'
 import { LaboratoryController } from './laboratory.controller.js'
 import { LaboratoryRepository } from './laboratory.repository.js'
 import { LaboratoryService } from './laboratory.service.js'
 
 @Module({
-  imports: [HistoryModule],
   controllers: [LaboratoryController],
   providers: [LaboratoryRepository, LaboratoryService],
   exports: [LaboratoryService],

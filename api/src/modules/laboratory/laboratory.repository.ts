@@ -1,6 +1,6 @@
 import { Injectable } from '@nestjs/common'
 import { sql } from 'kysely'
-import type { Executor, Trx } from '../../platform/database/executor.js'
+import type { Executor, Trx } from '../../platform/index.js'
 
 export interface LaboratoryRow {
   id: string

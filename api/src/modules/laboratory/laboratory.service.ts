@@ -2,10 +2,7 @@ import { Injectable } from '@nestjs/common'
 import type { BodyOf, changeLaboratory, laboratoryView } from '@weirlight/shared/contracts'
 import type { Actor } from '@weirlight/shared/permissions'
 import type { z } from 'zod'
-import { Database } from '../../platform/database/database.js'
-import type { Executor, Trx } from '../../platform/database/executor.js'
-import { notFound } from '../../platform/http/problem.js'
-import { VersionCheck } from '../history/index.js'
+import { Database, type Executor, notFound, type Trx, assertVersion } from '../../platform/index.js'
 import { LaboratoryRepository, type LaboratoryRow } from './laboratory.repository.js'
 
 type LaboratoryView = z.infer<typeof laboratoryView>
@@ -15,7 +12,6 @@ export class LaboratoryService {
   constructor(
     private readonly db: Database,
     private readonly laboratory: LaboratoryRepository,
-    private readonly versions: VersionCheck,
   ) {}
 
   async view(): Promise<LaboratoryView> {
@@ -46,7 +42,7 @@ export class LaboratoryService {
     return this.db.transaction(actor, 'laboratory.change', null, async (trx) => {
       const row = await this.laboratory.lock(trx)
       if (!row) throw notFound('laboratory')
-      await this.versions.assert(trx, { thing: 'laboratory', row, version: body.version })
+      await assertVersion(trx, { thing: 'laboratory', id: row.id, has: row.version, sent: body.version })
       await this.laboratory.update(trx, body)
       return toView(await this.get(trx))
     })

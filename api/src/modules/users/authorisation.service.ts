@@ -1,6 +1,5 @@
 import { Injectable } from '@nestjs/common'
-import type { Executor } from '../../platform/database/executor.js'
-import { notAllowedNow } from '../../platform/http/problem.js'
+import { type Executor, notAllowedNow } from '../../platform/index.js'
 import { AuthorisationsRepository, type AuthorisedActivity } from './authorisations.repository.js'
 
 const WORDS: Record<AuthorisedActivity, string> = {

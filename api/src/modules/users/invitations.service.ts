@@ -2,12 +2,14 @@ import { setTimeout as pause } from 'node:timers/promises'
 import { Injectable } from '@nestjs/common'
 import type { BodyOf, ResponseOf, acceptInvitation, getInvitation } from '@weirlight/shared/contracts'
 import type { Actor } from '@weirlight/shared/permissions'
-import { SYSTEM } from '../../platform/database/acting.js'
-import { Database } from '../../platform/database/database.js'
-import type { Trx } from '../../platform/database/executor.js'
-import { MailService } from '../../platform/mail/mail.service.js'
-import { SessionService } from '../../platform/sessions/session.service.js'
-import { SignInThrottle } from '../../platform/sessions/sign-in-throttle.js'
+import {
+  Database,
+  MailService,
+  SessionService,
+  SignInThrottle,
+  SYSTEM,
+  type Trx,
+} from '../../platform/index.js'
 import { LaboratoryService } from '../laboratory/index.js'
 import { LinksService } from './links.service.js'
 import { passphraseChangedMail } from './mails/passphrase-changed.mail.js'
@@ -54,7 +56,7 @@ export class InvitationsService {
       passphrase,
     )
     const actor = { ...actorOf(invited), name }
-    await this.db.transaction(actor, 'users.accept-invitation', null, async (trx) => {
+    await this.db.transaction(actor, 'user.accept-invitation', null, async (trx) => {
       const { userId } = await this.links.lock(trx, 'invitation', token)
       await this.users.activate(trx, userId, { name, passwordHash })
       await this.links.endAllOf(trx, userId)
@@ -72,7 +74,7 @@ export class InvitationsService {
   async reset(token: string, passphrase: string): Promise<void> {
     const owner = await this.links.get(this.db.fresh, 'reset', token)
     const passwordHash = await this.policy.accept(this.db.fresh, owner, passphrase)
-    await this.db.transaction(actorOf(owner), 'users.reset-passphrase', null, async (trx) => {
+    await this.db.transaction(actorOf(owner), 'user.reset-passphrase', null, async (trx) => {
       const { id, userId } = await this.links.lock(trx, 'reset', token)
       await this.users.updatePassphrase(trx, userId, passwordHash)
       await this.links.endAllOf(trx, userId)
@@ -84,7 +86,7 @@ export class InvitationsService {
   private async sendReset(email: string): Promise<void> {
     const account = await this.users.findCredentials(this.db.fresh, email)
     if (account?.status !== 'active') return
-    await this.db.transaction(SYSTEM, 'users.ask-reset', null, async (trx) => {
+    await this.db.transaction(SYSTEM, 'user.ask-reset', null, async (trx) => {
       if (!(await this.users.lock(trx, account.id))) return
       // a stranger who asks again and again fills nobody's mailbox
       if ((await this.links.countRecent(trx, account.id, 'reset')) >= RESETS_AN_HOUR) return
@@ -98,7 +100,7 @@ export class InvitationsService {
       key: `passphrase-changed:${tokenId}`,
       to: owner.email,
       ...passphraseChangedMail({ name: owner.name, laboratoryName: laboratory?.name ?? 'the laboratory' }),
-      about: { kind: 'users', id: owner.userId },
+      about: { kind: 'user', id: owner.userId },
     })
   }
 }

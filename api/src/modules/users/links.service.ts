@@ -1,9 +1,6 @@
 import { createHash, randomBytes } from 'node:crypto'
 import { Injectable } from '@nestjs/common'
-import { Settings } from '../../platform/config/settings.js'
-import type { Executor, Trx } from '../../platform/database/executor.js'
-import { ProblemError } from '../../platform/http/problem.js'
-import { MailService } from '../../platform/mail/mail.service.js'
+import { type Executor, MailService, ProblemError, Settings, type Trx } from '../../platform/index.js'
 import { LaboratoryService } from '../laboratory/index.js'
 import { invitationMail } from './mails/invitation.mail.js'
 import { resetMail } from './mails/reset.mail.js'
@@ -54,7 +51,7 @@ export class LinksService {
         timeZone: laboratory?.timeZone ?? 'UTC',
         laboratoryName: laboratory?.name ?? 'the laboratory',
       }),
-      about: { kind: 'users', id: to.id },
+      about: { kind: 'user', id: to.id },
     })
     return link
   }

@@ -1,6 +1,5 @@
 import { Injectable } from '@nestjs/common'
-import type { Executor } from '../../platform/database/executor.js'
-import { ProblemError } from '../../platform/http/problem.js'
+import { type Executor, ProblemError } from '../../platform/index.js'
 import { LaboratoryService } from '../laboratory/index.js'
 import { PassphraseHasher } from './passphrase-hasher.js'
 import { weaknessOf } from './passphrase-rules.js'

@@ -10,7 +10,7 @@ import {
 } from '@weirlight/shared/contracts'
 import type { Actor } from '@weirlight/shared/permissions'
 import type { FastifyRequest } from 'fastify'
-import { Endpoint, Input, MaybeActor, type InputOf } from '../../platform/http/endpoint.decorator.js'
+import { Endpoint, Input, type InputOf, MaybeActor } from '../../platform/index.js'
 import { addressOf } from './address-of.js'
 import { InvitationsService } from './invitations.service.js'
 import { SignInGuard, SigningIn } from './sign-in.guard.js'

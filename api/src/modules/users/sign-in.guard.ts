@@ -2,8 +2,8 @@ import { Injectable, createParamDecorator, type ExecutionContext } from '@nestjs
 import { AuthGuard } from '@nestjs/passport'
 import { signIn } from '@weirlight/shared/contracts'
 import type { FastifyRequest } from 'fastify'
+import { invalidInput, ProblemError } from '../../platform/index.js'
 import { toFieldProblems } from '../../platform/http/issues.js'
-import { ProblemError, invalidInput } from '../../platform/http/problem.js'
 import type { Account } from './sign-in.service.js'
 
 type SignInRequest = FastifyRequest & { user?: Account }

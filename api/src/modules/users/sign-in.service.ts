@@ -2,11 +2,14 @@ import { Injectable, Logger } from '@nestjs/common'
 import type { SessionView } from '@weirlight/shared/contracts'
 import type { Actor, Role } from '@weirlight/shared/permissions'
 import type { FastifyRequest } from 'fastify'
-import { Database } from '../../platform/database/database.js'
-import type { Executor } from '../../platform/database/executor.js'
-import { ProblemError } from '../../platform/http/problem.js'
-import { IDLE_MINUTES, SessionService } from '../../platform/sessions/session.service.js'
-import { SignInThrottle } from '../../platform/sessions/sign-in-throttle.js'
+import {
+  Database,
+  type Executor,
+  IDLE_MINUTES,
+  ProblemError,
+  SessionService,
+  SignInThrottle,
+} from '../../platform/index.js'
 import { LaboratoryService } from '../laboratory/index.js'
 import { PassphraseHasher } from './passphrase-hasher.js'
 import { UsersRepository } from './users.repository.js'

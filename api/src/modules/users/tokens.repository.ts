@@ -1,7 +1,7 @@
 import { Injectable } from '@nestjs/common'
 import type { Role } from '@weirlight/shared/permissions'
 import { sql } from 'kysely'
-import type { Executor, Trx } from '../../platform/database/executor.js'
+import type { Executor, Trx } from '../../platform/index.js'
 import type { UserStatus } from './users.repository.js'
 
 export type TokenKind = 'invitation' | 'reset'

@@ -10,7 +10,7 @@ import {
   startPassphraseReset,
 } from '@weirlight/shared/contracts'
 import type { Actor } from '@weirlight/shared/permissions'
-import { CurrentActor, Endpoint, Input, type InputOf } from '../../platform/http/endpoint.decorator.js'
+import { CurrentActor, Endpoint, Input, type InputOf } from '../../platform/index.js'
 import { UsersService } from './users.service.js'
 
 @Controller()

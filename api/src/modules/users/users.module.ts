@@ -1,5 +1,4 @@
 import { Module } from '@nestjs/common'
-import { HistoryModule } from '../history/index.js'
 import { LaboratoryModule } from '../laboratory/index.js'
 import { AuthorisationService } from './authorisation.service.js'
 import { AuthorisationsRepository } from './authorisations.repository.js'
@@ -18,7 +17,7 @@ import { UsersRepository } from './users.repository.js'
 import { UsersService } from './users.service.js'
 
 @Module({
-  imports: [HistoryModule, LaboratoryModule],
+  imports: [LaboratoryModule],
   controllers: [SessionController, UsersController],
   providers: [
     UsersRepository,

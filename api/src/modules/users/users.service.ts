@@ -1,13 +1,19 @@
 import { Injectable } from '@nestjs/common'
 import type { BodyOf, UserView, authoriseUser, changeUser, inviteUser } from '@weirlight/shared/contracts'
 import type { Actor, Role } from '@weirlight/shared/permissions'
-import type { Acting } from '../../platform/database/acting.js'
-import { Database } from '../../platform/database/database.js'
-import type { Executor, Trx } from '../../platform/database/executor.js'
-import { isUniqueViolation } from '../../platform/database/postgres-errors.js'
-import { ProblemError, invalidInput, notAllowedNow, notFound } from '../../platform/http/problem.js'
-import { SessionService } from '../../platform/sessions/session.service.js'
-import { VersionCheck } from '../history/index.js'
+import {
+  type Acting,
+  Database,
+  type Executor,
+  invalidInput,
+  isUniqueViolation,
+  notAllowedNow,
+  notFound,
+  ProblemError,
+  SessionService,
+  type Trx,
+  assertVersion,
+} from '../../platform/index.js'
 import { AuthorisationsRepository, type AuthorisationRow } from './authorisations.repository.js'
 import { LinksService } from './links.service.js'
 import { UsersRepository, type UserRow } from './users.repository.js'
@@ -27,7 +33,6 @@ export class UsersService {
     private readonly authorisations: AuthorisationsRepository,
     private readonly links: LinksService,
     private readonly sessions: SessionService,
-    private readonly versions: VersionCheck,
   ) {}
 
   async list(): Promise<{ items: UserView[] }> {
@@ -41,7 +46,7 @@ export class UsersService {
   }
 
   async invite(actor: Actor, body: BodyOf<typeof inviteUser>): Promise<UserView> {
-    return this.db.transaction(actor, 'users.invite', null, async (trx) => {
+    return this.db.transaction(actor, 'user.invite', null, async (trx) => {
       const { id } = await this.inviteIn(trx, actor, { ...body, clientId: body.clientId ?? null })
       return this.view(trx, id)
     })
@@ -68,7 +73,7 @@ export class UsersService {
   }
 
   async inviteAgain(actor: Actor, { id, version }: Omit<Move, 'reason'>): Promise<UserView> {
-    return this.db.transaction(actor, 'users.invite-again', null, async (trx) => {
+    return this.db.transaction(actor, 'user.invite-again', null, async (trx) => {
       const user = await this.lock(trx, id, version)
       if (user.status !== 'invited') throw notAllowedNow('This person has accepted the invitation already.')
       await this.links.send(trx, { kind: 'invitation', to: user, startedBy: actor.name })
@@ -78,7 +83,7 @@ export class UsersService {
 
   /** Starts a new passphrase; the person chooses it with the link that is mailed. */
   async startReset(actor: Actor, { id, version, reason }: Move): Promise<UserView> {
-    return this.db.transaction(actor, 'users.start-reset', reason, async (trx) => {
+    return this.db.transaction(actor, 'user.start-reset', reason, async (trx) => {
       const user = await this.lock(trx, id, version)
       if (user.status !== 'active') throw notAllowedNow('Only an active account can get a new passphrase.')
       await this.links.send(trx, { kind: 'reset', to: user, startedBy: actor.name })
@@ -87,7 +92,7 @@ export class UsersService {
   }
 
   async change(actor: Actor, id: string, body: BodyOf<typeof changeUser>): Promise<UserView> {
-    return this.db.transaction(actor, 'users.change', body.reason || null, async (trx) => {
+    return this.db.transaction(actor, 'user.change', body.reason || null, async (trx) => {
       const administrators = await this.users.lockActiveAdministrators(trx)
       const user = await this.lock(trx, id, body.version)
       const next = { name: body.name, role: body.role, clientId: body.clientId ?? null }
@@ -101,7 +106,7 @@ export class UsersService {
   }
 
   async disable(actor: Actor, { id, version, reason }: Move): Promise<UserView> {
-    return this.db.transaction(actor, 'users.disable', reason, async (trx) => {
+    return this.db.transaction(actor, 'user.disable', reason, async (trx) => {
       const administrators = await this.users.lockActiveAdministrators(trx)
       const user = await this.lock(trx, id, version)
       refuseLoss(actor, user, { administrators, done: 'be disabled' })
@@ -114,7 +119,7 @@ export class UsersService {
   }
 
   async enable(actor: Actor, { id, version, reason }: Move): Promise<UserView> {
-    return this.db.transaction(actor, 'users.enable', reason, async (trx) => {
+    return this.db.transaction(actor, 'user.enable', reason, async (trx) => {
       const user = await this.lock(trx, id, version)
       if (user.status !== 'disabled') throw notAllowedNow('This account is not disabled.')
       const hasPassphrase = await this.users.hasPassphrase(trx, id)
@@ -125,7 +130,7 @@ export class UsersService {
   }
 
   async authorise(actor: Actor, id: string, body: BodyOf<typeof authoriseUser>): Promise<UserView> {
-    return this.db.transaction(actor, 'users.authorise', null, async (trx) => {
+    return this.db.transaction(actor, 'user.authorise', null, async (trx) => {
       const user = await this.users.lock(trx, id)
       if (!user) throw notFound('person')
       if (user.role === 'client') throw notAllowedNow('People of a client utility do no work at the bench.')
@@ -140,7 +145,7 @@ export class UsersService {
   private async lock(trx: Trx, id: string, version: number): Promise<UserRow> {
     const row = await this.users.lock(trx, id)
     if (!row) throw notFound('person')
-    await this.versions.assert(trx, { thing: 'users', row, version })
+    await assertVersion(trx, { thing: 'users', id, has: row.version, sent: version })
     return row
   }
 
