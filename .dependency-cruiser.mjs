@@ -147,8 +147,8 @@ export default {
       name: 'no-unresolvable',
       severity: 'error',
       from: {},
-      // Types alone are the compiler's to find.
-      to: { couldNotResolve: true, dependencyTypesNot: ['type-only'] },
+      // A package of types alone (@types/pdfmake) is the compiler's to find.
+      to: { couldNotResolve: true, pathNot: ['^pdfmake/interfaces[.]js$'] },
     },
     {
       name: 'declared-packages',
