@@ -71,6 +71,22 @@ export function pageOf<T extends z.ZodType>(item: T) {
 export const person = z.object({ id, name: z.string() })
 export const analyteCode = z.enum(['Fe', 'Cu', 'Mn', 'Cr'])
 export type AnalyteCode = z.infer<typeof analyteCode>
+/** as people write them */
+export const ANALYTE_NAMES: Record<AnalyteCode, string> = {
+  Fe: 'Iron',
+  Cu: 'Copper',
+  Mn: 'Manganese',
+  Cr: 'Chromium',
+}
+export const FORM_NAMES = { total: 'total', dissolved: 'dissolved', hexavalent: '(VI)' } as const
+/** `Iron, total`, `Chromium(VI)` */
+export function determinationName(analyte: AnalyteCode, of: keyof typeof FORM_NAMES): string {
+  return of === 'hexavalent'
+    ? `${ANALYTE_NAMES[analyte]}(VI)`
+    : `${ANALYTE_NAMES[analyte]}, ${FORM_NAMES[of]}`
+}
+/** the micro sign is shown, never stored */
+export const showUnit = (stored: string): string => stored.replace('ug/', 'µg/')
 export const form = z.enum(['total', 'dissolved', 'hexavalent'])
 export const unit = z.enum(['mg/L', 'ug/L'])
 export const verdict = z.enum(['below', 'above', 'conditional-below', 'conditional-above'])

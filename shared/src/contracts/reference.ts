@@ -258,7 +258,7 @@ export type ProgrammeDefinition = z.infer<typeof programmeDefinition>
 /** A duty with a number of hours; shown, never decided. */
 export const clockDefinition = provenance.extend({
   code,
-  kind: z.enum(['notification', 'acknowledgement', 'resampling']),
+  kind: z.enum(['notification', 'acknowledgement', 'resampling', 'review']),
   jurisdiction: z.string(),
   duty: sentence,
   who: z.string(),
