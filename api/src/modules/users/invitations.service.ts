@@ -65,9 +65,7 @@ export class InvitationsService {
 
   /** Answers alike, in the same time, whether there is such an account or not. */
   async forget(email: string, address: string): Promise<void> {
-    const asking = `forgot:${email}`
-    await this.throttle.check(asking, address)
-    await this.throttle.record(asking, address, false)
+    await this.throttle.begin(`forgot:${email}`, address)
     await Promise.all([this.sendReset(email), pause(ANSWER_AFTER)])
   }
 

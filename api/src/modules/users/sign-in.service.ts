@@ -36,13 +36,15 @@ export class SignInService {
 
   /** The same answer, in the same time, for an unknown address, an account not active and a wrong passphrase. */
   async authenticate(email: string, passphrase: string, address: string): Promise<Account> {
-    await this.throttle.check(email, address)
+    const attempt = await this.throttle.begin(email, address)
     const found = await this.users.findCredentials(this.db.fresh, email)
     const isActive = found?.status === 'active'
     const isRight = await this.hasher.verify(isActive ? found.passwordHash : null, passphrase)
     const account = isActive && isRight ? found : undefined
-    await this.throttle.record(email, address, account !== undefined)
-    if (account) return { id: account.id, name: account.name, role: account.role, clientId: account.clientId }
+    if (account) {
+      await this.throttle.succeed(attempt)
+      return { id: account.id, name: account.name, role: account.role, clientId: account.clientId }
+    }
     this.logger.warn({ address, knownAccount: found?.id ?? null }, 'A sign-in was refused')
     throw new ProblemError('wrong-passphrase', 'The e-mail address or the passphrase is not right.')
   }

@@ -41,11 +41,10 @@ export class SigningService {
    */
   async confirmPassphrase(actor: Actor, passphrase: string): Promise<void> {
     const account = `signing:${actor.userId}`
-    await this.throttle.check(account, account)
+    const attempt = await this.throttle.begin(account, account)
     const stored = await this.users.findPassphraseHash(this.db.fresh, actor.userId)
     const isRight = await this.hasher.verify(stored, passphrase)
-    await this.throttle.record(account, account, isRight)
-    if (isRight) return
+    if (isRight) return this.throttle.succeed(attempt)
     const message = 'This is not your passphrase. Nothing was signed.'
     throw new ProblemError('wrong-passphrase', message, { errors: [{ path: 'passphrase', message }] })
   }

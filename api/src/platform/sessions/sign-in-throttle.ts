@@ -2,15 +2,23 @@ import { createHash } from 'node:crypto'
 import { Injectable } from '@nestjs/common'
 import { Database } from '../database/database.js'
 import { ProblemError } from '../http/problem.js'
-import { SignInAttemptsRepository } from './sign-in-attempts.repository.js'
+import { SignInAttemptsRepository, type Counts } from './sign-in-attempts.repository.js'
 
 export const WINDOW_MINUTES = 15
 /** wrong tries within the window: one account from one address, one account, one address */
 export const TRIES = { pair: 5, account: 30, address: 60 }
 
+/** One try at a passphrase, counted as wrong until it is said to be right. */
+export interface Try {
+  readonly id: string
+  readonly accountHash: string
+  readonly address: string
+}
+
 /**
  * Slows guessing down without locking anybody out: a refused try is not counted, so nobody can keep an
- * account shut, and an owner at another address is refused only when the whole world guesses at the account.
+ * account shut for good; and whoever signed in from an address before is held up by the tries made there alone,
+ * however many the rest of the world makes.
  */
 @Injectable()
 export class SignInThrottle {
@@ -19,31 +27,45 @@ export class SignInThrottle {
     private readonly attempts: SignInAttemptsRepository,
   ) {}
 
-  /** Before the passphrase is looked at. @throws throttled */
-  async check(email: string, address: string): Promise<void> {
-    const counts = await this.attempts.count(this.db.fresh, {
-      accountHash: hashOf(email),
-      address,
-      minutes: WINDOW_MINUTES,
+  /**
+   * Before the passphrase is looked at. Tries of one account are counted one after another, so that many sent
+   * at once are no more than many.
+   * @throws throttled
+   */
+  async begin(account: string, address: string): Promise<Try> {
+    const accountHash = hashOf(account)
+    return this.db.unwatched(async (trx) => {
+      await this.attempts.lockAccount(trx, accountHash)
+      const counts = await this.attempts.count(trx, { accountHash, address, minutes: WINDOW_MINUTES })
+      if (isOver(counts)) throw refusal(counts)
+      const id = await this.attempts.insert(trx, { accountHash, address, succeeded: false })
+      return { id, accountHash, address }
     })
-    const isOver =
-      counts.pair >= TRIES.pair || counts.account >= TRIES.account || counts.address >= TRIES.address
-    if (!isOver) return
-    const minutes = Math.max(1, Math.ceil(counts.secondsLeft / 60))
-    throw new ProblemError(
-      'throttled',
-      `Too many wrong tries. Wait ${minutes} ${minutes === 1 ? 'minute' : 'minutes'}, or ask for a new passphrase.`,
-      { retryAfterSeconds: Math.max(1, Math.ceil(counts.secondsLeft)) },
-    )
   }
 
-  async record(email: string, address: string, succeeded: boolean): Promise<void> {
-    await this.db.unwatched((trx) =>
-      this.attempts.insert(trx, { accountHash: hashOf(email), address, succeeded }),
-    )
+  /** The passphrase was right: the try counts no longer, and earlier wrong ones from there neither. */
+  async succeed({ id, accountHash, address }: Try): Promise<void> {
+    await this.db.unwatched(async (trx) => {
+      await this.attempts.delete(trx, id)
+      await this.attempts.insert(trx, { accountHash, address, succeeded: true })
+    })
   }
 }
 
-function hashOf(email: string): string {
-  return createHash('sha256').update(email.trim().toLowerCase()).digest('hex')
+function isOver(counts: Counts): boolean {
+  if (counts.pair >= TRIES.pair || counts.address >= TRIES.address) return true
+  return counts.account >= TRIES.account && !counts.isKnownAddress
+}
+
+function refusal({ secondsLeft }: Counts): ProblemError {
+  const minutes = Math.max(1, Math.ceil(secondsLeft / 60))
+  return new ProblemError(
+    'throttled',
+    `Too many tries. Wait ${minutes} ${minutes === 1 ? 'minute' : 'minutes'}, then try again.`,
+    { retryAfterSeconds: Math.max(1, Math.ceil(secondsLeft)) },
+  )
+}
+
+function hashOf(account: string): string {
+  return createHash('sha256').update(account.trim().toLowerCase()).digest('hex')
 }
