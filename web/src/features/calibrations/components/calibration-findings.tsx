@@ -40,8 +40,8 @@ export function CalibrationFindings({ stored, criteria, diagnosis, refusal, defi
           </p>
         )}
         <p className="quiet">
-          Published: {thousands(definition.molarAbsorptivity.value, 4)} ({definition.molarAbsorptivity.source},{' '}
-          {definition.molarAbsorptivity.date})
+          Published: {thousands(definition.molarAbsorptivity.value, 4)} ({definition.molarAbsorptivity.source}
+          , {definition.molarAbsorptivity.date})
         </p>
         {diagnosis && (
           <p className="verdict-line">
@@ -74,7 +74,10 @@ function LineBox({ stored }: { stored: StoredFit }) {
           { term: 'r²', detail: decimals(stored.rSquared, 6) },
           {
             term: 'Detection limit',
-            detail: stored.detectionLimit === null ? 'not calculable' : `${significant(stored.detectionLimit, 2)} mg/L`,
+            detail:
+              stored.detectionLimit === null
+                ? 'not calculable'
+                : `${significant(stored.detectionLimit, 2)} mg/L`,
           },
           {
             term: 'Quantification limit',

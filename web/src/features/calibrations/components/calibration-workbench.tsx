@@ -8,8 +8,8 @@ import { LIMITS } from '@weirlight/shared/limits'
 import { STATE_MARKS } from '@weirlight/shared/states'
 import { Button } from 'antd'
 import { useMemo, useState } from 'react'
-import { paths, useCall, useLaboratoryTime, useNotice } from '../../../lib'
-import { Bar, Box, Columns, MarginPage, StatusTag, Strip } from '../../../ui'
+import { paths, ProblemError, useCall, useLaboratoryTime, useNotice } from '../../../lib'
+import { Bar, Box, Columns, MarginPage, StatusTag } from '../../../ui'
 import { ConfirmDialog, ReasonDialog } from '../../../ui/dialogs'
 import { LeaveDialog } from '../../../ui/form-problem'
 import {
@@ -39,7 +39,9 @@ export function CalibrationWorkbench({ view, method }: { view: CalibrationView; 
   const notice = useNotice()
   const { at } = useLaboratoryTime()
   const [typed, setTyped] = useState<ReadonlyMap<string, string>>(new Map())
-  const [asked, setAsked] = useState<{ what: 'submit' | 'leave-out' | 'remove'; row?: DraftStandard } | null>(null)
+  const [asked, setAsked] = useState<{ what: 'submit' | 'leave-out' | 'remove'; row?: DraftStandard } | null>(
+    null,
+  )
   const submit = useCall(submitCalibration, {
     invalidates: [getCalibration, listCalibrations],
     onDone: () => notice.done(`${view.number} submitted for signature.`),
@@ -66,7 +68,7 @@ export function CalibrationWorkbench({ view, method }: { view: CalibrationView; 
     0,
   )
   const submitNow = async () => {
-    if (!(await sheet.save())) throw new Error('the draft is not saved')
+    if (!(await sheet.save())) throw notSaved()
     await submit.mutateAsync({ params: { id: view.id }, body: { version: sheet.getVersion() } })
   }
 
@@ -144,7 +146,10 @@ export function CalibrationWorkbench({ view, method }: { view: CalibrationView; 
           <Button onClick={() => addRow('standard')} disabled={draft.standards.length >= LIMITS.standards}>
             Add a standard
           </Button>
-          <Button onClick={() => addRow('second-source')} disabled={draft.standards.length >= LIMITS.standards}>
+          <Button
+            onClick={() => addRow('second-source')}
+            disabled={draft.standards.length >= LIMITS.standards}
+          >
             Add a second source
           </Button>
           <Button onClick={() => change(widened)} disabled={replicatesOf(draft) >= LIMITS.replicates}>
@@ -160,7 +165,9 @@ export function CalibrationWorkbench({ view, method }: { view: CalibrationView; 
         consequences={[
           'It can no longer be changed; the QA manager signs it or sends it back.',
           ...(failed.length > 0
-            ? [`Not met: ${failed.map((each) => each.what).join('; ')}. The signer will be asked to justify this.`]
+            ? [
+                `Not met: ${failed.map((each) => each.what).join('; ')}. The signer will be asked to justify this.`,
+              ]
             : []),
         ]}
         actionLabel="Submit"
@@ -203,10 +210,21 @@ export function CalibrationWorkbench({ view, method }: { view: CalibrationView; 
   )
 }
 
+function notSaved(): ProblemError {
+  return new ProblemError({
+    code: 'not-allowed-now',
+    status: 0,
+    title: 'Not saved',
+    detail: 'The sheet is not saved yet: mend or fill in what is marked on it, then submit.',
+  })
+}
+
 function withTyped(draft: CalibrationDraft, typed: ReadonlyMap<string, string>): CalibrationDraft {
   return [...typed].reduce((current, [cell, text]) => {
     const [rowKey = '', columnKey = ''] = cell.split(' ')
-    return cellText(current, rowKey, columnKey) === text ? current : setCell(current, { rowKey, columnKey, text })
+    return cellText(current, rowKey, columnKey) === text
+      ? current
+      : setCell(current, { rowKey, columnKey, text })
   }, draft)
 }
 

@@ -9,17 +9,7 @@ import type { CalibrationDraft } from '../draft/calibration-draft'
 import { instrumentChoices, lotChoices } from '../draft/lots'
 import { ChoiceList, ChoiceSelect } from './choice-select'
 import { Labelled } from './labelled'
-
-export const MODEL_WORDS: Record<CalibrationDraft['model'], string> = {
-  linear: 'Line',
-  'linear-through-origin': 'Line through the origin',
-  quadratic: 'Parabola',
-}
-export const WEIGHTING_WORDS: Record<CalibrationDraft['weighting'], string> = {
-  none: 'none',
-  'inverse-concentration': '1 / concentration',
-  'inverse-concentration-squared': '1 / concentration²',
-}
+import { MODEL_WORDS, WEIGHTING_WORDS } from './model-words'
 
 interface SetUpBoxProps {
   draft: CalibrationDraft

@@ -56,8 +56,8 @@ export function SheetTrouble({ sheet, homeless }: SheetTroubleProps) {
             </button>
           }
         >
-          {clashes.length === 1 ? 'One entry' : `${clashes.length} entries`} differed between you. Yours stand now; compare
-          them with the other person before you submit.
+          {clashes.length === 1 ? 'One entry' : `${clashes.length} entries`} differed between you. Yours stand
+          now; compare them with the other person before you submit.
         </Strip>
       )}
       {status === 'offline' && (

@@ -33,10 +33,7 @@ export interface StandardsGridProps {
   live: DraftAssessment
   typed: ReadonlyMap<string, string>
   setTyped: (typed: ReadonlyMap<string, string>) => void
-  change: (
-    next: (draft: CalibrationDraft) => CalibrationDraft,
-    reasons?: Record<string, string>,
-  ) => void
+  change: (next: (draft: CalibrationDraft) => CalibrationDraft, reasons?: Record<string, string>) => void
   cellState: (rowKey: string, columnKey: string) => CellState
   definition: MethodDefinition
   materials: readonly MaterialRow[]
@@ -81,7 +78,12 @@ export function StandardsGrid(props: StandardsGridProps) {
       })
       .map((each) => cellName(each.rowKey, each.columnKey))
     if (cells.length === 0) return settle(trimmed)
-    setAsking({ changes: trimmed, cells, title: titleOf(trimmed, cells, base), anchor: anchorOf(trimmed, cells) })
+    setAsking({
+      changes: trimmed,
+      cells,
+      title: titleOf(trimmed, cells, base),
+      anchor: anchorOf(trimmed, cells),
+    })
   }
 
   const titleOf = (changes: readonly CellChange[], cells: readonly string[], from: CalibrationDraft) => {
@@ -168,15 +170,12 @@ function useColumns(props: StandardsGridProps): RunGridColumn<DraftStandard>[] {
   const backOf = (row: DraftStandard) => live.readBack.get(row.key)
   return [
     { kind: 'entry', key: CONCENTRATION, title: 'Standard', unit: 'mg/L' },
-    ...Array.from(
-      { length: replicates },
-      (_, index): RunGridColumn<DraftStandard> => ({
-        kind: 'entry',
-        key: readingColumn(index),
-        title: SUBSCRIPTS[index] ?? `A${index + 1}`,
-        unit: `${definition.wavelengthNm} nm`,
-      }),
-    ),
+    ...Array.from({ length: replicates }, (_, index): RunGridColumn<DraftStandard> => ({
+      kind: 'entry',
+      key: readingColumn(index),
+      title: SUBSCRIPTS[index] ?? `A${index + 1}`,
+      unit: `${definition.wavelengthNm} nm`,
+    })),
     {
       kind: 'show',
       key: 'tint',

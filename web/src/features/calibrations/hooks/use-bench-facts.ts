@@ -5,7 +5,11 @@ import { definitionOf, instrumentsQuery, materialsQuery, methodQuery } from '../
 export function useMethod(methodId: string) {
   return useQuery({
     ...methodQuery(methodId),
-    select: (method) => ({ definition: definitionOf(method), molarMass: method.molarMass, title: method.title }),
+    select: (method) => ({
+      definition: definitionOf(method),
+      molarMass: method.molarMass,
+      title: method.title,
+    }),
     enabled: methodId !== '',
   })
 }
