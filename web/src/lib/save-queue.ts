@@ -76,6 +76,16 @@ export class SaveQueue<E extends Entry> {
     const cell = this.cells.get(cellKey(rowKey, columnKey))
     return cell && cell.state !== 'saved' ? cell.entry.text : undefined
   }
+  /** what the server does not have yet, with how it stands */
+  entries(): { entry: E; state: EntryState; error: string | undefined }[] {
+    return this.open().map(({ entry, state, error }) => ({ entry, state, error }))
+  }
+  /** takes one entry back; what is just being sent stays until the server has answered */
+  drop(rowKey: string, columnKey: string): void {
+    const key = cellKey(rowKey, columnKey)
+    if (this.cells.get(key)?.state === 'saving') return
+    if (this.cells.delete(key)) this.changed()
+  }
   count(state: EntryState): number {
     return [...this.cells.values()].filter((cell) => cell.state === state).length
   }
