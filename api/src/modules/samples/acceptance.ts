@@ -1,5 +1,11 @@
 import { AssayError, holdTime } from '@weirlight/shared/assay'
-import type { acceptanceCheck, container, preservation, purpose, sampleView } from '@weirlight/shared/contracts'
+import type {
+  acceptanceCheck,
+  container,
+  preservation,
+  purpose,
+  sampleView,
+} from '@weirlight/shared/contracts'
 import type { z } from 'zod'
 import { engineRule, type Kept } from './holding.js'
 import type { HoldRule, MethodRules } from './method-rules.js'
@@ -38,7 +44,11 @@ const PRESERVATION_WORDS = {
 } as const
 
 const passed = (finding: string): Found => ({ ok: true, finding })
-const failed = (finding: string, weight: 'reject' | 'qualify' = 'reject'): Found => ({ ok: false, finding, weight })
+const failed = (finding: string, weight: 'reject' | 'qualify' = 'reject'): Found => ({
+  ok: false,
+  finding,
+  weight,
+})
 const numberOf = (text: string) => (text.trim() === '' ? null : Number(text))
 
 /**
@@ -58,7 +68,10 @@ export function checkAcceptance(
       `Holding time: ${method.title}`,
       holdingTimeLeft(sample, method, at),
     ]),
-    ...oncePerRule(sample).map((hold): [string, Found] => [`Preservation: ${hold.code}`, preserved(sample, hold)]),
+    ...oncePerRule(sample).map((hold): [string, Found] => [
+      `Preservation: ${hold.code}`,
+      preserved(sample, hold),
+    ]),
     ['Temperature at receipt', temperature(sample)],
     ['Container', rightContainer(sample)],
     ['Filtered in the field', filtered(sample)],
@@ -98,12 +111,18 @@ function holdingTimeLeft(sample: Kept, method: MethodRules, at: Date): Found {
   try {
     const { remainingHours, state, hours } = holdTime({
       collectedAt: sample.collectedAt,
-      preservation: { kind: sample.preservation, pH: numberOf(sample.ph), temperatureC: numberOf(sample.temperatureC) },
+      preservation: {
+        kind: sample.preservation,
+        pH: numberOf(sample.ph),
+        temperatureC: numberOf(sample.temperatureC),
+      },
       rule: engineRule(method.holdTime),
       at: at < sample.collectedAt ? sample.collectedAt : at,
     })
     if (state === 'breached') return failed(`Over by ${span(-remainingHours)}; ${span(hours)} were allowed.`)
-    return passed(`${span(remainingHours)} left of ${span(hours)}${state === 'soon' ? ': read it soon' : ''}.`)
+    return passed(
+      `${span(remainingHours)} left of ${span(hours)}${state === 'soon' ? ': read it soon' : ''}.`,
+    )
   } catch (error) {
     if (error instanceof AssayError) return failed(error.message)
     throw error
@@ -124,7 +143,8 @@ function oncePerRule(sample: SampleToCheck): HoldRule[] {
 function preserved(sample: SampleToCheck, hold: HoldRule): Found {
   const words = PRESERVATION_WORDS[sample.preservation]
   const shorter = `${span(hold.rule.hours)} of holding time count instead`
-  if (sample.preservation === 'none') return passed(`Not preserved: ${span(hold.rule.hours)} from collection.`)
+  if (sample.preservation === 'none')
+    return passed(`Not preserved: ${span(hold.rule.hours)} from collection.`)
   const condition = hold.rule.conditions.find(({ preservation }) => preservation === sample.preservation)
   if (!condition) return failed(`The rule for this determination does not allow ${words}.`)
   const { minPH, maxPH, maxTemperatureC } = condition
@@ -152,7 +172,9 @@ function wantedPh(low: number | undefined, high: number | undefined): string {
 /** Only where a rule speaks of temperature; the strictest one counts. */
 function temperature(sample: SampleToCheck): Found {
   const asked = sample.methods.flatMap(({ holdTime: hold }) =>
-    hold.rule.conditions.flatMap(({ maxTemperatureC }) => (maxTemperatureC === undefined ? [] : [maxTemperatureC])),
+    hold.rule.conditions.flatMap(({ maxTemperatureC }) =>
+      maxTemperatureC === undefined ? [] : [maxTemperatureC],
+    ),
   )
   if (asked.length === 0) {
     return passed(sample.temperatureC === '' ? 'Not asked for.' : `${sample.temperatureC} °C, not asked for.`)
@@ -160,7 +182,9 @@ function temperature(sample: SampleToCheck): Found {
   const most = Math.min(...asked)
   const found = numberOf(sample.temperatureC)
   if (found === null) return failed(`Not recorded; at most ${most} °C is asked for.`)
-  return found <= most ? passed(`${sample.temperatureC} °C.`) : failed(`${sample.temperatureC} °C; at most ${most} °C is asked for.`)
+  return found <= most
+    ? passed(`${sample.temperatureC} °C.`)
+    : failed(`${sample.temperatureC} °C; at most ${most} °C is asked for.`)
 }
 
 function rightContainer(sample: SampleToCheck): Found {

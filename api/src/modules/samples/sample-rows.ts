@@ -101,6 +101,13 @@ export interface LockedSample {
   version: number
 }
 
+export interface LockedDetermination {
+  id: string
+  sampleId: string
+  state: DeterminationState
+  version: number
+}
+
 export interface NewSample extends Omit<Received, 'determinations'> {
   state: State
   receivedBy: string

@@ -1,9 +1,10 @@
 import { Injectable } from '@nestjs/common'
 import { sql } from 'kysely'
-import type { Executor, Trx } from '../../platform/database/executor.js'
+import type { Executor, Trx } from '../../platform/index.js'
 import type {
   Correction,
   DeterminationRow,
+  LockedDetermination,
   LockedSample,
   NewSample,
   SampleFilter,
@@ -87,17 +88,17 @@ export class SamplesRepository {
     return rows[0]
   }
 
-  async lockDetermination(
-    trx: Trx,
-    id: string,
-  ): Promise<{ id: string; sampleId: string; state: string; version: number } | undefined> {
-    const { rows } = await sql<{ id: string; sampleId: string; state: string; version: number }>`
+  async lockDetermination(trx: Trx, id: string): Promise<LockedDetermination | undefined> {
+    const { rows } = await sql<LockedDetermination>`
       select id, sample_id, state, version from determinations where id = ${id} for update`.execute(trx)
     return rows[0]
   }
 
   /** Numbers are drawn in the order given; a form that was sent before gives nothing back. */
-  async insert(trx: Trx, samples: readonly NewSample[]): Promise<{ id: string; number: string; index: number }[]> {
+  async insert(
+    trx: Trx,
+    samples: readonly NewSample[],
+  ): Promise<{ id: string; number: string; index: number }[]> {
     const { rows } = await sql<{ id: string; number: string; draftId: string }>`
       insert into samples (number, draft_id, client_id, sampling_point_id, purpose, kind, state, collected_at, collected_by,
         received_at, received_by, preservation, ph, temperature_c, container, filtered_in_field, condition, remarks, upload_id)
@@ -142,7 +143,13 @@ export class SamplesRepository {
 
   async decide(
     trx: Trx,
-    { id, state, reason, consent, qualified }: { id: string; state: string; reason: string; consent: string; qualified: boolean },
+    {
+      id,
+      state,
+      reason,
+      consent,
+      qualified,
+    }: { id: string; state: string; reason: string; consent: string; qualified: boolean },
   ): Promise<void> {
     await sql`update samples set state = ${state}, acceptance_reason = ${reason}, client_consent = ${consent},
       qualified = ${qualified}, version = version + 1 where id = ${id}`.execute(trx)

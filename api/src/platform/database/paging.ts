@@ -21,6 +21,15 @@ export function fromCursor(after: string | undefined, parts: number): string[] |
   }
 }
 
+/** For lists in the order of their ids. */
+export function idFromCursor(after: string | undefined): string | undefined {
+  const [id] = fromCursor(after, 1) ?? []
+  if (id === undefined || /^[1-9]\d{0,18}$/.test(id)) return id
+  throw invalidInput([
+    { path: 'after', message: 'This page of the list cannot be found; start again at the top.' },
+  ])
+}
+
 /** From `limit + 1` rows: a page and the cursor of the next one. */
 export function toPage<R, T>(
   rows: readonly R[],

@@ -1,0 +1,5 @@
+export { SamplesModule } from './samples.module.js'
+export { SamplesService } from './samples.service.js'
+export { ReceivingService, type Receiving } from './receiving.service.js'
+export { UploadsRepository, type KeptUpload } from './uploads.repository.js'
+export { holdingAt, type HoldingView } from './holding.js'
