@@ -13,14 +13,17 @@ import { SettingsModule } from './config/settings.module.js'
 import { Settings, type SettingsValues } from './config/settings.js'
 import { Database } from './database/database.js'
 import { openPool } from './database/pool.js'
+import { DocumentsService } from './documents/documents.service.js'
 import { EventsModule } from './events/events.module.js'
 import { HealthController } from './health/health.controller.js'
+import { HealthRepository } from './health/health.repository.js'
 import { HealthService } from './health/health.service.js'
 import { AccessGuard } from './http/access.guard.js'
 import { EndpointInterceptor } from './http/endpoint.interceptor.js'
 import { ProblemFilter } from './http/problem.filter.js'
 import { RouteCheck } from './http/route-check.js'
 import { JobHandlers } from './jobs/handlers.js'
+import { JobsRepository } from './jobs/jobs.repository.js'
 import { JobsService } from './jobs/jobs.service.js'
 import { LoggingModule } from './logging/logging.module.js'
 import { MailSender } from './mail/mail-sender.js'
@@ -29,6 +32,7 @@ import { MailRepository } from './mail/mail.repository.js'
 import { MailService } from './mail/mail.service.js'
 import { ActorsRepository } from './sessions/actors.repository.js'
 import { SessionService } from './sessions/session.service.js'
+import { SheetsService } from './sheets/sheets.service.js'
 import { SignInAttemptsRepository } from './sessions/sign-in-attempts.repository.js'
 import { SignInThrottle } from './sessions/sign-in-throttle.js'
 
@@ -48,10 +52,14 @@ const services = [
   SignInAttemptsRepository,
   SignInThrottle,
   JobHandlers,
+  JobsRepository,
+  DocumentsService,
+  SheetsService,
   MailTransport,
   MailRepository,
   MailService,
   MailSender,
+  HealthRepository,
   HealthService,
 ]
 
@@ -68,9 +76,9 @@ export class PlatformModule {
       },
       {
         provide: JobsService,
-        inject: [JobHandlers, Settings],
-        useFactory: (handlers: JobHandlers, settings: Settings) =>
-          new JobsService(handlers, options, settings),
+        inject: [JobHandlers, JobsRepository, Settings],
+        useFactory: (handlers: JobHandlers, repository: JobsRepository, settings: Settings) =>
+          new JobsService(handlers, repository, options, settings),
       },
       {
         provide: RouteCheck,

@@ -207,6 +207,7 @@ export interface Clients {
 export interface Clocks {
   appliesTo: Generated<string>;
   code: string;
+  definition: Generated<Json>;
   duty: string;
   edition: string;
   hours: Numeric;
@@ -323,7 +324,9 @@ export interface Laboratory {
 
 export interface Limits {
   analyte: string;
+  code: string | null;
   decisionRule: string;
+  definition: Generated<Json>;
   digits: number;
   edition: string;
   form: string;

@@ -1,8 +1,8 @@
 import { Injectable } from '@nestjs/common'
-import { sql } from 'kysely'
 import { Database } from '../database/database.js'
 import { JobsService } from '../jobs/jobs.service.js'
 import { MailTransport } from '../mail/mail-transport.js'
+import { HealthRepository } from './health.repository.js'
 
 type Part = 'ok' | 'failing'
 
@@ -10,16 +10,14 @@ type Part = 'ok' | 'failing'
 export class HealthService {
   constructor(
     private readonly db: Database,
+    private readonly probe: HealthRepository,
     private readonly jobs: JobsService,
     private readonly transport: MailTransport,
   ) {}
 
   async check(): Promise<{ status: Part; database: Part; jobs: Part; mail: Part }> {
     const [database, jobs, mail] = await Promise.all([
-      part(async () => {
-        await sql`select 1`.execute(this.db.fresh)
-        return true
-      }),
+      part(() => this.probe.answers(this.db.fresh)),
       part(() => this.jobs.isMoving(this.db.fresh)),
       part(() => this.transport.answers()),
     ])

@@ -4,7 +4,6 @@ import {
   type BeforeApplicationShutdown,
   type OnApplicationBootstrap,
 } from '@nestjs/common'
-import { CompiledQuery, sql } from 'kysely'
 import PgBoss from 'pg-boss'
 import { Settings } from '../config/settings.js'
 import type { Executor, Trx } from '../database/executor.js'
@@ -13,6 +12,7 @@ import { withRequestContext } from '../http/request-context.js'
 import { JobHandlers, type FoundHandler } from './handlers.js'
 import { JobBell } from './job-bell.js'
 import { declaredJobs, type Job } from './job.js'
+import { JobsRepository } from './jobs.repository.js'
 
 export interface EnqueueOptions {
   startAfterSeconds?: number
@@ -43,6 +43,7 @@ export class JobsService implements OnApplicationBootstrap, BeforeApplicationShu
 
   constructor(
     private readonly handlers: JobHandlers,
+    private readonly repository: JobsRepository,
     private readonly options: JobsOptions,
     settings: Settings,
   ) {
@@ -68,19 +69,12 @@ export class JobsService implements OnApplicationBootstrap, BeforeApplicationShu
   /** Adds a job inside the caller's transaction: it exists if and only if the change does. */
   async enqueue<D>(trx: Trx, job: Job<D>, data: D, options: EnqueueOptions = {}): Promise<void> {
     const envelope: Envelope = { job: job.name, input: job.data.parse(data) }
-    const plain = trx.withoutPlugins()
     await this.boss.send(job.name, envelope, {
-      db: {
-        executeSql: async (text: string, values: unknown[]) => {
-          const { rows } = await plain.executeQuery(CompiledQuery.raw(text, values))
-          return { rows }
-        },
-      },
+      db: this.repository.writerOn(trx),
       ...(options.startAfterSeconds === undefined ? {} : { startAfter: options.startAfterSeconds }),
       ...(options.onceKey === undefined ? {} : { singletonKey: options.onceKey, singletonSeconds: 1 }),
     })
-    // heard when the transaction commits, by every process that works on jobs
-    await sql`select pg_notify('weirlight_jobs', ${job.name})`.execute(trx)
+    await this.repository.ring(trx, job.name)
   }
 
   async onApplicationBootstrap(): Promise<void> {
@@ -112,11 +106,7 @@ export class JobsService implements OnApplicationBootstrap, BeforeApplicationShu
 
   /** Whether the queue answers and no job that is due has waited for two minutes. */
   async isMoving(db: Executor): Promise<boolean> {
-    const { rows } = await sql<{ late: boolean }>`select exists (
-      select from ${sql.id(JOB_SCHEMA, 'job')}
-      where state in ('created', 'retry') and start_after < now() - interval '2 minutes'
-        and name <> ${DEAD} and name not like '\\_\\_pgboss%') as late`.execute(db)
-    return rows[0]?.late === false
+    return !(await this.repository.isAnyLate(db))
   }
 
   private async declare(job: Job): Promise<void> {
