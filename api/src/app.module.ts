@@ -1,6 +1,8 @@
 import { Module, type DynamicModule } from '@nestjs/common'
 import { HistoryModule } from './modules/history/index.js'
 import { LaboratoryModule } from './modules/laboratory/index.js'
+import { MethodsModule } from './modules/methods/index.js'
+import { ProgrammesModule } from './modules/programmes/index.js'
 import { UsersModule } from './modules/users/index.js'
 import { EventsModule } from './platform/events/events.module.js'
 import { PlatformModule, type PlatformOptions } from './platform/platform.module.js'
@@ -11,6 +13,8 @@ export const FEATURES: NonNullable<DynamicModule['imports']> = [
   HistoryModule,
   LaboratoryModule,
   UsersModule,
+  MethodsModule,
+  ProgrammesModule,
 ]
 
 @Module({})

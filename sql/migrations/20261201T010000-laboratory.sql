@@ -38,6 +38,7 @@ create table programmes (
 create table limits (
   id bigint generated always as identity primary key,
   programme_id bigint not null references programmes,
+  code text, -- of the shipped catalogue; null for a limit the laboratory wrote itself
   analyte text not null check (analyte in ('Fe', 'Cu', 'Mn', 'Cr')),
   form text not null check (form in ('total', 'dissolved', 'hexavalent')),
   kind text not null,
@@ -53,7 +54,9 @@ create table limits (
   edition text not null,
   mark text not null,
   valid_from date not null,
-  valid_until date check (valid_until is null or valid_until > valid_from)
+  valid_until date check (valid_until is null or valid_until > valid_from),
+  definition jsonb not null default '{}', -- the catalogue's entry whole: statistic, note, place
+  unique (programme_id, code) -- loading the catalogue again changes rows instead of doubling them
 );
 create index limits_by_programme on limits (programme_id, analyte, form); -- looked up for every determination
 
@@ -69,7 +72,8 @@ create table clocks (
   applies_to text not null default 'any',
   source text not null,
   edition text not null,
-  mark text not null
+  mark text not null,
+  definition jsonb not null default '{}'
 );
 
 create table methods (

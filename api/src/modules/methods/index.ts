@@ -1,0 +1,3 @@
+export { MethodsModule } from './methods.module.js'
+export { MethodsService } from './methods.service.js'
+export { loadMethods } from './load-methods.js'

@@ -1,0 +1,2 @@
+export { ProgrammesModule } from './programmes.module.js'
+export { loadProgrammes } from './load-programmes.js'
