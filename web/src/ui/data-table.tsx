@@ -17,6 +17,8 @@ export interface Column<Row> {
   /** puts something around an aligned number, e.g. `NumberWithStory` */
   wrap?: (row: Row, aligned: ReactNode) => ReactNode
   isNarrow?: boolean
+  /** left out on a phone */
+  isSecondary?: boolean
 }
 
 interface Page<Row> {
@@ -82,7 +84,11 @@ export function DataTable<Row>(props: DataTableProps<Row>) {
 }
 
 function classOf<Row>(column: Column<Row>): string | undefined {
-  const names = [column.kind === 'number' && 'n', column.isNarrow && 'narrow'].filter(Boolean)
+  const names = [
+    column.kind === 'number' && 'n',
+    column.isNarrow && 'narrow',
+    column.isSecondary && 'is-secondary',
+  ].filter(Boolean)
   return names.length > 0 ? names.join(' ') : undefined
 }
 

@@ -13,6 +13,8 @@ interface MarginPageProps {
   /** small print below a rule: who is here, cautions of the method */
   notes?: readonly ReactNode[]
   bar?: ReactNode
+  /** what the folded margin is called on tablet and phone */
+  foldLabel?: string
   children: ReactNode
 }
 
@@ -25,6 +27,7 @@ export function MarginPage({
   facts = [],
   notes = [],
   bar,
+  foldLabel = 'What this stands on',
   children,
 }: MarginPageProps) {
   useTitle(title)
@@ -68,7 +71,7 @@ export function MarginPage({
         {hasMore &&
           (isNarrow ? (
             <details className="page-fold">
-              <summary>{shownFacts.length > 0 ? 'What this stands on' : 'Cautions and notes'}</summary>
+              <summary>{shownFacts.length > 0 ? foldLabel : 'Cautions and notes'}</summary>
               {more}
             </details>
           ) : (

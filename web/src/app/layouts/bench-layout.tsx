@@ -14,6 +14,14 @@ export function BenchLayout({ children }: { children: ReactNode }) {
   const may = useCan()
   const today = useQuery(todayQuery)
   const counts = today.data?.counts
+  const way = useRef<HTMLElement>(null)
+  const { pathname } = useLocation()
+  useEffect(() => {
+    // on a phone the way is longer than the screen: show where we are
+    way.current
+      ?.querySelector('[aria-current="page"]')
+      ?.scrollIntoView({ block: 'nearest', inline: 'center' })
+  }, [pathname])
   const shown = AREAS.filter((area) => area.routes.length > 0 && may(area.needs))
   return (
     <>
@@ -24,7 +32,7 @@ export function BenchLayout({ children }: { children: ReactNode }) {
         <Link to={paths.today} aria-label="Weirlight, Today">
           <WeirMark isSmall />
         </Link>
-        <nav className="way" aria-label="The work">
+        <nav className="way" ref={way} aria-label="The work">
           <NavLink to={paths.today}>Today</NavLink>
           {shown.map((area, index) => (
             <Fragment key={area.to}>

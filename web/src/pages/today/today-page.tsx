@@ -38,6 +38,7 @@ export function TodayPage() {
         </time>
       }
       facts={[{ term: 'You', detail: `${ROLE_NAMES[role]}. ${WHAT_YOU_DO[role]}` }, ...facts]}
+      foldLabel="You and the bench"
       bar={<Bar lead={<h2>What needs you, by the clock that runs out first</h2>} />}
     >
       <Loaded query={today}>{(data) => <TodayLines lines={data.lines} />}</Loaded>

@@ -9,6 +9,8 @@ interface ShowColumn<Row> {
   unit?: string
   isNumber?: boolean
   isNarrow?: boolean
+  /** left out on a phone */
+  isSecondary?: boolean
   text?: (row: Row) => string | null | undefined
   cell?: (row: Row, index: number) => ReactNode
   /** puts something around an aligned number, e.g. `NumberWithStory` */

@@ -109,8 +109,12 @@ function canEnter<Row>(row: Row | undefined, column: EntryColumn<Row> | undefine
 }
 
 function headClass<Row>(column: RunGridColumn<Row>): string | undefined {
-  if (column.kind === 'entry') return 'n'
-  const names = [column.isNumber && 'n', column.isNarrow && 'narrow'].filter(Boolean)
+  if (column.kind === 'entry') return 'n entry'
+  const names = [
+    column.isNumber && 'n',
+    column.isNarrow && 'narrow',
+    column.isSecondary && 'is-secondary',
+  ].filter(Boolean)
   return names.length > 0 ? names.join(' ') : undefined
 }
 

@@ -11,7 +11,8 @@ export function lineClockWords(clock: LineClock, now: number): string {
   const { at, sense, prefix } = clock
   if (at === null || sense === 'none') return prefix
   const left = Date.parse(at) - now
-  const words = durationWords(left)
+  // a duration is not broken across lines
+  const words = durationWords(left).replaceAll(' ', '\u00a0')
   if (sense === 'since') return `${prefix} for ${words}`.trim()
   return (left >= 0 ? `${prefix} in ${words}` : `${prefix} late by ${words}`).trim()
 }
