@@ -129,7 +129,8 @@ const work = async () => {
 
   summary()
   say(lastLine(total()))
-  return total().failed > 0 ? 1 : 0
+  const { passed, failed } = total()
+  return failed > 0 || passed === 0 ? 1 : 0
 }
 
 /** Whatever goes wrong before or between the suites, the last line says so. */
