@@ -35,9 +35,18 @@ export default defineConfig({
     },
   },
   test: {
-    environment: 'jsdom',
-    include: ['src/**/*.spec.{ts,tsx}'],
-    setupFiles: ['src/testing/set-up.ts'],
     css: false,
+    projects: [
+      { extends: true, test: { name: 'plain', include: ['src/**/*.spec.ts'], environment: 'node' } },
+      {
+        extends: true,
+        test: {
+          name: 'drawn',
+          include: ['src/**/*.spec.tsx'],
+          environment: 'jsdom',
+          setupFiles: ['src/testing/set-up.ts'],
+        },
+      },
+    ],
   },
 })

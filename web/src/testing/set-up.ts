@@ -1,6 +1,9 @@
 import { cleanup } from '@testing-library/react'
 import { afterEach } from 'vitest'
 
+// Testing Library would say so itself if the test functions were global
+Object.assign(globalThis, { IS_REACT_ACT_ENVIRONMENT: true })
+
 afterEach(cleanup)
 
 // jsdom has neither; antd and the theme ask for both

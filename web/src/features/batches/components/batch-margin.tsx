@@ -27,8 +27,8 @@ export function useBatchFacts(batch: BatchView): MaybeFact[] {
       term: 'Instrument and cell',
       detail: (
         <>
-          <Link to={paths.instrument(batch.instrumentId)}>{batch.instrumentName}</Link> · {batch.wavelengthNm} nm ·{' '}
-          {batch.cellPathCm} cm
+          <Link to={paths.instrument(batch.instrumentId)}>{batch.instrumentName}</Link> · {batch.wavelengthNm}{' '}
+          nm · {batch.cellPathCm} cm
         </>
       ),
     },

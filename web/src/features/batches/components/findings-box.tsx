@@ -109,7 +109,10 @@ function ActionDialog(props: {
   const { finding, batchId, onClose, onSaved } = props
   const form = useEndpointForm<typeof recordFindingAction, Values>({
     endpoint: recordFindingAction,
-    toInput: (values) => ({ params: { id: batchId }, body: { findingId: finding.id, ...values, text: values.text ?? '' } }),
+    toInput: (values) => ({
+      params: { id: batchId },
+      body: { findingId: finding.id, ...values, text: values.text ?? '' },
+    }),
     invalidates: [getBatch],
     onDone: (batch) => {
       onSaved(batch)
@@ -130,7 +133,11 @@ function ActionDialog(props: {
             ))}
           </Radio.Group>
         </Form.Item>
-        <Form.Item name="text" label="In your words" extra="The reviewer reads this; it is kept in the record.">
+        <Form.Item
+          name="text"
+          label="In your words"
+          extra="The reviewer reads this; it is kept in the record."
+        >
           <Input.TextArea autoSize={{ minRows: 2, maxRows: 6 }} />
         </Form.Item>
         <div className="row">

@@ -36,7 +36,13 @@ export function PositionDialog({ row, field, onClose, onSaved }: PositionDialogP
   const dilution = Form.useWatch('dilution', form.form)
   const needsReason = row.readings.length > 0 && dilution !== undefined && dilution.trim() !== row.dilution
   return (
-    <Modal open onCancel={onClose} title={`Dilution and note: ${positionName(row)}`} footer={null} width={440}>
+    <Modal
+      open
+      onCancel={onClose}
+      title={`Dilution and note: ${positionName(row)}`}
+      footer={null}
+      width={440}
+    >
       <Form
         layout="vertical"
         initialValues={{ dilution: row.dilution, note: row.note }}

@@ -5,7 +5,14 @@ import type { RunGridColumn } from '../../../ui/run-grid'
 import { Tint } from '../../../ui/tint'
 import type { BatchView, PositionView } from '../api/batch-queries'
 import { columnTitle, replicateColumns } from '../run-sheet/cells'
-import { commonUnit, flagWords, KIND_WORDS, shownNumbers, UNIT_WORDS, verdictOf } from '../run-sheet/row-texts'
+import {
+  commonUnit,
+  flagWords,
+  KIND_WORDS,
+  shownNumbers,
+  UNIT_WORDS,
+  verdictOf,
+} from '../run-sheet/row-texts'
 
 export interface SheetRow extends PositionView {
   live: Assessment
@@ -24,7 +31,8 @@ interface ColumnsInput {
 /** The columns of a run sheet, in the order the eye goes: which tube, its colour, its readings, what they come to. */
 export function useRunColumns({ batch, rows, edit }: ColumnsInput): RunGridColumn<SheetRow>[] {
   const unit = commonUnit(rows)
-  const inCell = (row: SheetRow) => (unit === null ? ` ${UNIT_WORDS[row.live.unit ?? row.reporting.displayUnit]}` : '')
+  const inCell = (row: SheetRow) =>
+    unit === null ? ` ${UNIT_WORDS[row.live.unit ?? row.reporting.displayUnit]}` : ''
   return [
     { kind: 'show', key: 'position', title: '#', isNarrow: true, cell: (row) => row.position },
     {
@@ -45,14 +53,12 @@ export function useRunColumns({ batch, rows, edit }: ColumnsInput): RunGridColum
           },
         ]
       : []),
-    ...replicateColumns(batch.replicates).map(
-      (key): RunGridColumn<SheetRow> => ({
-        kind: 'entry',
-        key,
-        title: columnTitle(key),
-        unit: `${batch.wavelengthNm} nm`,
-      }),
-    ),
+    ...replicateColumns(batch.replicates).map((key): RunGridColumn<SheetRow> => ({
+      kind: 'entry',
+      key,
+      title: columnTitle(key),
+      unit: `${batch.wavelengthNm} nm`,
+    })),
     {
       kind: 'show',
       key: 'tint',
@@ -68,7 +74,9 @@ export function useRunColumns({ batch, rows, edit }: ColumnsInput): RunGridColum
       isNumber: true,
       text: (row) => shownNumbers(row, row.live).concentration,
       wrap: (row, aligned) => (
-        <span title={row.live.concentration === null ? undefined : `${row.live.concentration} mg/L, unrounded`}>
+        <span
+          title={row.live.concentration === null ? undefined : `${row.live.concentration} mg/L, unrounded`}
+        >
           <NumberWithStory resultId={row.resultId} text={shownNumbers(row, row.live).concentration}>
             {aligned}
           </NumberWithStory>

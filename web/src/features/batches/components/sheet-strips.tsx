@@ -10,13 +10,11 @@ export function SheetStrips({ batch, sheet }: { batch: BatchView; sheet: RunShee
   const failed = sheet.queue.entries().filter((each) => each.state === 'failed')
   return (
     <>
-      {batch.returnedReason !== '' && (
-        <Strip title="Sent back">{batch.returnedReason}</Strip>
-      )}
+      {batch.returnedReason !== '' && <Strip title="Sent back">{batch.returnedReason}</Strip>}
       {sheet.queue.isOffline && (
         <Strip title="No connection" isAlert>
-          Go on typing: {sheet.queue.summary.charAt(0).toLowerCase() + sheet.queue.summary.slice(1)} They are sent by
-          themselves when the server answers.
+          Go on typing: {sheet.queue.summary.charAt(0).toLowerCase() + sheet.queue.summary.slice(1)} They are
+          sent by themselves when the server answers.
         </Strip>
       )}
       {sheet.clashes.map((clash) => {

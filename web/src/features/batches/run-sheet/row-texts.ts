@@ -39,7 +39,10 @@ const decimalsIn = (text: string) => /\.(\d+)/.exec(text)?.[1]?.length ?? 0
  * Concentration and expanded uncertainty as the sheet shows them: for a sample what would be reported; for quality control the value
  * itself, to the digits its uncertainty leaves meaning.
  */
-export function shownNumbers(row: Assessed, found: Assessment): { concentration: string; uncertainty: string } {
+export function shownNumbers(
+  row: Assessed,
+  found: Assessment,
+): { concentration: string; uncertainty: string } {
   if (found.concentration === null) return { concentration: '', uncertainty: '' }
   if (row.kind === 'sample') {
     return {
