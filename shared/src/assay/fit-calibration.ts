@@ -1,9 +1,11 @@
+import { sampleCorrelation } from 'simple-statistics'
 import { requireArray, requireFinite, requireObject, requireOneOf } from './argument-checks.js'
 import { AssayError } from './assay-error.js'
 import { lowestAboveZero, modelWeight, WEIGHTINGS, type Weighting } from './calibration-weights.js'
 import { requireConcentration, requireSpread, requireWeight } from './curve-points.js'
 import { invertCurve } from './curve-inversion.js'
-import { exactSum } from './double-double.js'
+import { largestOf } from './descriptive-statistics.js'
+import { exactSum, powerOfTwoOf } from './double-double.js'
 import { gate } from './finite-gate.js'
 import { describeFit, type PolynomialFit } from './fit-polynomial.js'
 import { solveLeastSquares } from './least-squares.js'
@@ -87,7 +89,13 @@ export function fitCalibration(input: FitCalibrationInput): CalibrationFit {
 
   const { weights, weightScale } = scaleWeights({ points, x, weighting })
   const isWeighted = weighting !== 'none'
-  const solution = solveLeastSquares({ x, y, degree, throughOrigin, weights: isWeighted ? weights : undefined })
+  const solution = solveLeastSquares({
+    x,
+    y,
+    degree,
+    throughOrigin,
+    weights: isWeighted ? weights : undefined,
+  })
   const polynomial = describeFit({ solution, degree, throughOrigin, n: x.length, isWeighted })
   const range = { low: Math.min(...x), high: Math.max(...x) }
   const s = polynomial.residualStandardDeviation
@@ -111,7 +119,9 @@ export function fitCalibration(input: FitCalibrationInput): CalibrationFit {
       standardizedResidual: spread > 0 && leverage < 1 - 1e-12 ? residual / spread : 0,
       leverage,
       backCalculated,
-      relativeErrorPercent: hasError ? finiteOrNull((100 * (backCalculated - concentration)) / concentration) : null,
+      relativeErrorPercent: hasError
+        ? finiteOrNull((100 * (backCalculated - concentration)) / concentration)
+        : null,
     }
   })
   return gate({
@@ -119,7 +129,7 @@ export function fitCalibration(input: FitCalibrationInput): CalibrationFit {
     model,
     weighting,
     weightScale,
-    correlation: correlationOf({ x, y, weights }),
+    correlation: correlationOf({ x, y, weights, isWeighted }),
     range,
     readBack,
     relativeStandardErrorPercent: relativeStandardError(readBack, polynomial.n - polynomial.degreesOfFreedom),
@@ -146,31 +156,43 @@ function scaleWeights(given: {
   const { points, x, weighting } = given
   const lowest = lowestAboveZero(x.map((concentration) => ({ concentration })))
   const raw = x.map((concentration, index) => {
-    const weight = weighting === 'given' ? points[index]?.weight : modelWeight(weighting, concentration, lowest)
+    const weight =
+      weighting === 'given' ? points[index]?.weight : modelWeight(weighting, concentration, lowest)
     return requireWeight(weight, index)
   })
   const weightScale = raw.length / exactSum(raw)
   const weights = raw.map((weight) => weight * weightScale)
   const lost = weights.findIndex((weight) => !(weight > 0 && Number.isFinite(weight)))
   if (lost >= 0 || !Number.isFinite(weightScale)) {
-    throw new AssayError('invalid-weight', 'The weights are too far apart to compute with.', Math.max(0, lost))
+    throw new AssayError(
+      'invalid-weight',
+      'The weights are too far apart to compute with.',
+      Math.max(0, lost),
+    )
   }
   return { weights, weightScale }
 }
 
-function correlationOf(given: { x: readonly number[]; y: readonly number[]; weights: readonly number[] }): number {
-  const { x, y, weights } = given
-  const largestX = Math.max(...x.map(Math.abs))
-  const largestY = Math.max(...y.map(Math.abs))
-  if (largestX === 0 || largestY === 0) return 0
-  const u = centre(
-    x.map((value) => value / largestX),
-    weights,
-  )
-  const v = centre(
-    y.map((value) => value / largestY),
-    weights,
-  )
+function correlationOf(given: {
+  x: readonly number[]
+  y: readonly number[]
+  weights: readonly number[]
+  isWeighted: boolean
+}): number {
+  const { weights } = given
+  const scaleX = powerOfTwoOf(largestOf(given.x))
+  const scaleY = powerOfTwoOf(largestOf(given.y))
+  const x = given.x.map((value) => value / scaleX)
+  const y = given.y.map((value) => value / scaleY)
+  const value = given.isWeighted ? weightedCorrelation({ x, y, weights }) : sampleCorrelation(x, y)
+  // readings that do not vary leave 0 / 0
+  return Number.isFinite(value) ? Math.min(1, Math.max(-1, value)) : 0
+}
+
+function weightedCorrelation(given: { x: number[]; y: number[]; weights: readonly number[] }): number {
+  const { weights } = given
+  const u = centre(given.x, weights)
+  const v = centre(given.y, weights)
   let uu = 0
   let vv = 0
   let uv = 0
@@ -181,8 +203,7 @@ function correlationOf(given: { x: readonly number[]; y: readonly number[]; weig
     vv += weight * other * other
     uv += weight * value * other
   })
-  if (uu === 0 || vv === 0) return 0
-  return Math.min(1, Math.max(-1, uv / Math.sqrt(uu) / Math.sqrt(vv)))
+  return uv / Math.sqrt(uu) / Math.sqrt(vv)
 }
 
 function centre(values: readonly number[], weights: readonly number[]): number[] {

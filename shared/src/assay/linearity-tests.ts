@@ -1,7 +1,7 @@
 import { AssayError } from './assay-error.js'
 import { readCurve, requireSpread, type CurvePoint } from './curve-points.js'
 import { fUpperProbability, fUpperQuantile } from './distributions.js'
-import { describeSample } from './descriptive-statistics.js'
+import { describeSample, largestOf } from './descriptive-statistics.js'
 import { exactSum } from './double-double.js'
 import { gate } from './finite-gate.js'
 import { solveLeastSquares } from './least-squares.js'
@@ -25,7 +25,7 @@ export interface MandelTest {
 
 /** Readings carry no more than 52 bits: no standard deviation below that is believed, so that a ratio stays finite. */
 function roundingOf(y: readonly number[]): number {
-  return 2 ** -52 * y.reduce((most, value) => Math.max(most, Math.abs(value)), 0)
+  return 2 ** -52 * largestOf(y)
 }
 
 /**
@@ -50,7 +50,9 @@ export function mandelTest(points: readonly CurvePoint[]): MandelTest {
   const rounding = roundingOf(y)
   const divisor = Math.max(s2, rounding)
   const isExactLine = s1 <= rounding
-  const gain = isExactLine ? 0 : (df + 1) * (s1 / divisor) * (s1 / divisor) - df * (s2 / divisor) * (s2 / divisor)
+  const gain = isExactLine
+    ? 0
+    : (df + 1) * (s1 / divisor) * (s1 / divisor) - df * (s2 / divisor) * (s2 / divisor)
   const testValue = Math.max(0, gain)
   const criticalValue95 = fUpperQuantile(0.05, 1, df)
   const criticalValue99 = fUpperQuantile(0.01, 1, df)
@@ -106,16 +108,21 @@ export function lackOfFitTest(points: readonly CurvePoint[], degree = 1): LackOf
   const dfLack = levels.size - degree - 1
   const dfPure = x.length - levels.size
   if (dfLack < 1) {
-    throw new AssayError('too-few-points', `A lack-of-fit test needs at least ${degree + 2} different concentrations.`)
+    throw new AssayError(
+      'too-few-points',
+      `A lack-of-fit test needs at least ${degree + 2} different concentrations.`,
+    )
   }
   if (dfPure < 1) {
-    throw new AssayError('too-few-points', 'A lack-of-fit test needs replicate readings of at least one standard.')
+    throw new AssayError(
+      'too-few-points',
+      'A lack-of-fit test needs replicate readings of at least one standard.',
+    )
   }
   const { residuals } = solveLeastSquares({ x, y, degree, throughOrigin: false })
   const lack: number[] = []
   const pure: number[] = []
-  const largest = Math.max(...y.map(Math.abs))
-  const scale = largest === 0 ? 1 : largest
+  const scale = largestOf(y) || 1
   for (const indices of levels.values()) {
     const sample = describeSample(indices.map((i) => y[i] ?? 0))
     const meanResidual = exactSum(indices.map((i) => residuals[i] ?? 0)) / sample.n / scale
@@ -127,7 +134,10 @@ export function lackOfFitTest(points: readonly CurvePoint[], degree = 1): LackOf
   const pureSum = exactSum(pure)
   const pureErrorSd = Math.sqrt(pureSum / dfPure)
   if (!(pureErrorSd > 2 ** -52)) {
-    throw new AssayError('no-spread', 'All replicates agree exactly: there is no spread to compare the curve with.')
+    throw new AssayError(
+      'no-spread',
+      'All replicates agree exactly: there is no spread to compare the curve with.',
+    )
   }
   const fValue = lackSum / dfLack / (pureSum / dfPure)
   const criticalValue95 = fUpperQuantile(0.05, dfLack, dfPure)
