@@ -32,9 +32,9 @@ export function calibrationChart(input: CalibrationChartInput): EChartsOption {
     ...curve.map((point) => point.concentration),
   ])
   const readings = [...points.map((point) => point.absorbance), ...curve.map((point) => point.fitted)]
-  const y = roundAxis([0, ...readings.filter((value) => value >= 0)])
-  // a blank a little below zero is seen without a whole step of empty paper
   const lowest = Math.min(0, ...readings)
+  // a blank a little below zero needs a small step, not a large one of empty paper
+  const y = roundAxis([0, ...readings], lowest < 0 ? 9 : 5)
   const look = axisLook(colours)
   const band = {
     type: 'line' as const,
@@ -59,9 +59,8 @@ export function calibrationChart(input: CalibrationChartInput): EChartsOption {
       name: `absorbance, ${input.wavelengthNm} nm`,
       nameLocation: 'end',
       ...y,
-      min: lowest < 0 ? lowest - y.interval / 8 : 0,
       ...look,
-      axisLabel: { ...look.axisLabel, showMinLabel: lowest === 0 },
+      axisLabel: { ...look.axisLabel, showMinLabel: lowest === 0 || lowest < -y.interval / 2 },
       nameTextStyle: { ...look.nameTextStyle, align: 'left' },
     },
     series: [

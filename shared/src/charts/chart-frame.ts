@@ -63,9 +63,14 @@ export function emptyChart(text: string, colours: ChartColours): EChartsOption {
 
 /** Ends and step of an axis on round numbers (1, 2 or 5 times a power of ten) around all values. */
 export function roundAxis(values: readonly number[], ticks = 5) {
-  const low = Math.min(...values)
-  const high = Math.max(...values)
-  const span = high - low || Math.abs(high) || 1
+  let low = Math.min(...values)
+  let high = Math.max(...values)
+  if (low === high) {
+    // one value alone stands in the middle, zero alone at the foot
+    low -= Math.abs(high) / 2
+    high += Math.abs(high) / 2 || 1
+  }
+  const span = high - low
   const raw = span / ticks
   const power = 10 ** Math.floor(Math.log10(raw))
   const step = ([1, 2, 5, 10].find((factor) => factor * power >= raw * 0.999) ?? 10) * power

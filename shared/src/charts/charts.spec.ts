@@ -189,7 +189,7 @@ describe('axis ends', () => {
     [[0, 4], { min: 0, max: 4, interval: 1 }],
     [[-0.3, 0.3], { min: -0.4, max: 0.4, interval: 0.2 }],
     [[0, 0], { min: 0, max: 1, interval: 0.2 }],
-    [[5, 5], { min: 5, max: 5, interval: 1 }],
+    [[5, 5], { min: 2, max: 8, interval: 1 }],
   ])('%j', (values, expected) => {
     expect(roundAxis(values)).toEqual(expected)
   })
