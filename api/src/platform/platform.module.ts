@@ -32,6 +32,9 @@ import { MailRepository } from './mail/mail.repository.js'
 import { MailService } from './mail/mail.service.js'
 import { ActorsRepository } from './sessions/actors.repository.js'
 import { SessionService } from './sessions/session.service.js'
+import { SealsWorker } from './seals/seals.jobs.js'
+import { SealsRepository } from './seals/seals.repository.js'
+import { SealsService } from './seals/seals.service.js'
 import { SheetsService } from './sheets/sheets.service.js'
 import { SignInAttemptsRepository } from './sessions/sign-in-attempts.repository.js'
 import { SignInThrottle } from './sessions/sign-in-throttle.js'
@@ -53,6 +56,9 @@ const services = [
   SignInThrottle,
   JobHandlers,
   JobsRepository,
+  SealsRepository,
+  SealsService,
+  SealsWorker,
   DocumentsService,
   SheetsService,
   MailTransport,
