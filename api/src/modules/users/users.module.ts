@@ -2,6 +2,7 @@ import { Module } from '@nestjs/common'
 import { LaboratoryModule } from '../laboratory/index.js'
 import { AuthorisationService } from './authorisation.service.js'
 import { AuthorisationsRepository } from './authorisations.repository.js'
+import { FirstAdministratorService } from './first-administrator.service.js'
 import { InvitationsService } from './invitations.service.js'
 import { LinksService } from './links.service.js'
 import { PassphraseHasher } from './passphrase-hasher.js'
@@ -31,9 +32,10 @@ import { UsersService } from './users.service.js'
     SignInService,
     InvitationsService,
     UsersService,
+    FirstAdministratorService,
     SigningService,
     AuthorisationService,
   ],
-  exports: [SigningService, AuthorisationService, UsersService, PassphraseHasher],
+  exports: [SigningService, AuthorisationService, UsersService, FirstAdministratorService, PassphraseHasher],
 })
 export class UsersModule {}
