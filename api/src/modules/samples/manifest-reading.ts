@@ -30,6 +30,8 @@ export interface ReadManifest {
   bodies: Receiving[]
 }
 
+const TOO_MANY =
+  'This row has more entries than columns: put an entry that holds the separator in quotation marks.'
 const TITLES = new Map(MANIFEST_COLUMNS.map(({ key, title }) => [key, title]))
 const titleOf = (key: ManifestColumn) => TITLES.get(key) ?? key
 
@@ -49,6 +51,8 @@ export function readManifest(sheet: readonly SheetRow[], known: KnownToManifest)
   const read = lines.map(({ line: row, cells }) => {
     const text = (key: ManifestColumn) => cells[indexOf.get(key) ?? -1]?.trim() ?? ''
     const one = readRow(text, known)
+    const tooMany = cells.slice(top?.cells.length ?? 0).some((cell) => cell.trim() !== '')
+    if (tooMany) one.problems.push({ column: titleOf('determinations'), message: TOO_MANY })
     if (one.body) {
       const same = `${one.body.pointId} ${one.body.collectedAt} ${one.body.determinations.map((d) => d.methodId).join()}`
       const first = seen.get(same)
@@ -109,9 +113,11 @@ function readRow(
   const parsed = receiveBody.safeParse(found)
   if (!parsed.success) {
     for (const issue of parsed.error.issues) {
-      const column = COLUMN_OF[String(issue.path[0])] ?? 'remarks'
+      const field = String(issue.path[0])
+      const column = COLUMN_OF[field] ?? 'remarks'
       // what could not be read at all was said above
-      if (!problems.some((one) => one.column === titleOf(column))) say(column, issue.message)
+      const isUnread = found[field as keyof typeof found] === undefined
+      if (!isUnread && !problems.some((one) => one.column === titleOf(column))) say(column, issue.message)
     }
     return { body: undefined, problems }
   }
