@@ -1,0 +1,6 @@
+export { batchReleased } from './events.js'
+export { toResultRow } from './result-row.js'
+export { ResultsModule } from './results.module.js'
+export type { ResultRecord } from './results.repository.js'
+export { ResultsService } from './results.service.js'
+export { CAUTION, type ResultInputs } from './story.service.js'

@@ -1,0 +1,139 @@
+import { Injectable } from '@nestjs/common'
+import type { exportResults, listResults, QueryOf, resultTrend } from '@weirlight/shared/contracts'
+import { determinationName, showUnit, type PositionLimit } from '@weirlight/shared/contracts'
+import { convertUnit } from '@weirlight/shared/assay'
+import {
+  Clock,
+  Database,
+  notFound,
+  toCsv,
+  toPage,
+  toXlsx,
+  type AnswerOf,
+  type CellValue,
+  type Executor,
+  type FileAnswer,
+} from '../../platform/index.js'
+import { toResultRow } from './result-row.js'
+import { ResultsRepository, type ResultRecord } from './results.repository.js'
+
+const EXPORT_ROWS = 20_000
+
+@Injectable()
+export class ResultsService {
+  constructor(
+    private readonly db: Database,
+    private readonly clock: Clock,
+    private readonly results: ResultsRepository,
+  ) {}
+
+  async list({
+    after,
+    limit,
+    ...filter
+  }: QueryOf<typeof listResults>): Promise<AnswerOf<typeof listResults>> {
+    const rows = await this.results.list(this.db.read, { after, limit, filter })
+    return toPage(rows, { limit, key: (row) => [row.id], item: toResultRow })
+  }
+
+  async get(db: Executor, id: string): Promise<ResultRecord> {
+    const row = await this.results.find(db, id)
+    if (!row) throw notFound('result')
+    return row
+  }
+
+  /** Released results of one sample: what a certificate may say. */
+  async releasedOf(db: Executor, sampleId: string): Promise<ResultRecord[]> {
+    return this.results.released(db, { sampleId })
+  }
+
+  /** `clientId` narrows to one client's rows; another client's point gives an empty trend. */
+  async trend(
+    query: QueryOf<typeof resultTrend>,
+    clientId: string | null,
+  ): Promise<AnswerOf<typeof resultTrend>> {
+    const rows = await this.results.trend(this.db.read, { ...query, form: query.form, clientId })
+    const newest = rows.at(-1)
+    const unit = (newest?.unit ?? 'mg/L') as 'mg/L' | 'ug/L'
+    const limit = newest?.limitSnapshot as unknown as PositionLimit | null | undefined
+    const shown = (value: number) => convertUnit({ value, from: 'mg/L', to: unit })
+    return {
+      unit,
+      limit: limit
+        ? { name: limit.name, value: convertUnit({ value: Number(limit.value), from: limit.unit, to: unit }) }
+        : null,
+      points: rows.map((row) => ({
+        resultId: row.id,
+        at: row.collectedAt.toISOString(),
+        value: shown(row.numericForCompliance ?? row.concentration),
+        text: row.reportedText,
+        verdict: toResultRow(row).verdict,
+        nonDetect: row.reportedText.startsWith('<'),
+      })),
+    }
+  }
+
+  async export({ format, ...filter }: QueryOf<typeof exportResults>): Promise<FileAnswer> {
+    const found = await this.results.list(this.db.read, { after: undefined, limit: EXPORT_ROWS, filter })
+    const rows = found.slice(0, EXPORT_ROWS).map(exportRow)
+    const now = this.clock.now()
+    const name = `results-${now.toISOString().slice(0, 10)}`
+    if (format === 'csv') {
+      const content = toCsv(EXPORT_COLUMNS, rows)
+      return { content, mediaType: 'text/csv', filename: `${name}.csv` }
+    }
+    const columns = EXPORT_COLUMNS.map((header) => ({ header }))
+    const content = await toXlsx([{ name: 'Results', columns, rows }], now)
+    const mediaType = 'application/vnd.openxmlformats-officedocument.spreadsheetml.sheet'
+    return { content, mediaType, filename: `${name}.xlsx` }
+  }
+}
+
+const EXPORT_COLUMNS = [
+  'Sample',
+  'Client',
+  'Point',
+  'Point name',
+  'Determination',
+  'Method',
+  'Collected',
+  'Measured',
+  'Released',
+  'State',
+  'Result',
+  'U (k=2)',
+  'Unit',
+  'Unrounded mg/L',
+  'Limit',
+  'Limit value',
+  'Limit unit',
+  'Finding',
+  'Flags',
+  'Batch',
+]
+
+function exportRow(row: ResultRecord): CellValue[] {
+  const shown = toResultRow(row)
+  return [
+    shown.sampleNumber,
+    shown.clientName,
+    shown.pointCode,
+    shown.pointName,
+    determinationName(shown.analyte, shown.form),
+    shown.methodTitle,
+    shown.collectedAt,
+    shown.measuredAt,
+    shown.releasedAt,
+    shown.state,
+    shown.text,
+    shown.uncertaintyText,
+    showUnit(shown.unit),
+    shown.concentration,
+    shown.limitName,
+    shown.limitValue,
+    shown.limitUnit ? showUnit(shown.limitUnit) : null,
+    shown.verdict,
+    shown.flags.join(', '),
+    shown.batchNumber,
+  ]
+}
