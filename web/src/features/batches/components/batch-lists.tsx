@@ -60,7 +60,8 @@ const REVIEW: Column<BatchRow> = {
 export function BatchesToReview({ rowTo }: { rowTo: (id: string) => string }) {
   const query = useQuery(batchesInState('submitted'))
   const rows = query.data?.items
-  if (query.isError && !rows) return <Failed problem={asProblem(query.error)} retry={() => void query.refetch()} />
+  if (query.isError && !rows)
+    return <Failed problem={asProblem(query.error)} retry={() => void query.refetch()} />
   return (
     <Box title={rows ? `Batches to review: ${rows.length}` : 'Batches to review'}>
       <DataTable

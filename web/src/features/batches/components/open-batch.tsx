@@ -10,7 +10,14 @@ import { Box, Empty, Loaded } from '../../../ui'
 import { DecimalInput } from '../../../ui/decimal-input'
 import { FormProblem } from '../../../ui/form-problem'
 import { MomentInput } from '../../../ui/time-inputs'
-import { calibrationQuery, calibrationsInState, ChoiceList, ChoiceSelect, lotChoices, materialsQuery } from '../../calibrations'
+import {
+  calibrationQuery,
+  calibrationsInState,
+  ChoiceList,
+  ChoiceSelect,
+  lotChoices,
+  materialsQuery,
+} from '../../calibrations'
 import { methodDefinitionQuery, waitingQuery, type WaitingDetermination } from '../api/batch-queries'
 import { firstChoice, middleLevel } from '../run-sheet/first-choice'
 import { MethodPicker } from './method-picker'
@@ -164,12 +171,16 @@ function BatchFields({ form, methodId, waiting }: BatchFieldsProps) {
       : []
   const concentrationOf = (lotId: string | null) =>
     materials.data?.items.find((lot) => lot.id === lotId)?.concentration
-  const takeConcentration = (field: 'controlConcentration' | 'verificationConcentration') => (lotId: string | null) => {
-    const found = concentrationOf(lotId)
-    // a lot at working strength says what is expected of it; a stock is diluted first
-    const highest = Math.max(0, ...(calibration.data?.standards ?? []).map((each) => Number(each.concentration)))
-    if (found && Number(found) <= highest) antForm.setFieldsValue({ [field]: found })
-  }
+  const takeConcentration =
+    (field: 'controlConcentration' | 'verificationConcentration') => (lotId: string | null) => {
+      const found = concentrationOf(lotId)
+      // a lot at working strength says what is expected of it; a stock is diluted first
+      const highest = Math.max(
+        0,
+        ...(calibration.data?.standards ?? []).map((each) => Number(each.concentration)),
+      )
+      if (found && Number(found) <= highest) antForm.setFieldsValue({ [field]: found })
+    }
   const chosenRows = waiting.filter((row) => chosen.includes(row.id))
   const sampleChoices = chosenRows.map((row) => ({
     value: row.id,
@@ -241,8 +252,8 @@ function BatchFields({ form, methodId, waiting }: BatchFieldsProps) {
           )}
         </div>
         <p className="note">
-          A verification blank and standard open and close the run; a method blank and the control sample stand before the
-          samples.
+          A verification blank and standard open and close the run; a method blank and the control sample
+          stand before the samples.
         </p>
       </Box>
       <Box title="At the bench">

@@ -296,7 +296,7 @@ function unsaved(): ProblemError {
     code: 'not-allowed-now',
     status: 0,
     title: 'Not saved',
-    detail: 'Some readings have not reached the server yet. Wait for the connection, or look at the marked cells.',
+    detail:
+      'Some readings have not reached the server yet. Wait for the connection, or look at the marked cells.',
   })
 }
-

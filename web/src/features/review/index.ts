@@ -1,0 +1,1 @@
+export { ReviewBatchById } from './components/review-batch'
