@@ -123,6 +123,8 @@ export const calibrationView = calibrationRow.extend({
   signatures: z.array(signature),
   corrections: z.array(correctionView),
   returnedReason: z.string(),
+  /** why it was signed although a criterion failed */
+  justification: z.string(),
   validFrom: instant.nullable(),
   replacedBy: z.object({ id, number: z.string() }).nullable(),
   batches: z.array(z.object({ id, number: z.string() })),
@@ -130,6 +132,8 @@ export const calibrationView = calibrationRow.extend({
 export type CalibrationView = z.infer<typeof calibrationView>
 
 const standardBody = z.object({
+  /** of a standard already saved; without it standards are recognised by their order */
+  id: id.nullish(),
   role: z.enum(['standard', 'second-source']),
   concentration: concentrationText,
   lotId: id.nullable(),
