@@ -297,6 +297,7 @@ create table calibrations (
   returned_by bigint references users,
   returned_reason text not null default '',
   ended_at timestamptz,
+  ended_reason text not null default '', -- why it was taken out of force
   replaced_by bigint references calibrations,
   copied_from bigint references calibrations,
   version int not null default 1,

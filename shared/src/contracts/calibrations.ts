@@ -125,6 +125,8 @@ export const calibrationView = calibrationRow.extend({
   returnedReason: z.string(),
   /** why it was signed although a criterion failed */
   justification: z.string(),
+  /** why it was taken out of force */
+  endedReason: z.string(),
   validFrom: instant.nullable(),
   replacedBy: z.object({ id, number: z.string() }).nullable(),
   batches: z.array(z.object({ id, number: z.string() })),
