@@ -1,0 +1,3 @@
+export { ClientsModule } from './clients.module.js'
+export { ClientsService } from './clients.service.js'
+export type { ContactView } from './contacts.repository.js'
