@@ -122,7 +122,7 @@ export interface Calibrations {
   criteria: Generated<Json>
   draftId: string | null
   endedAt: Timestamp | null
-  endedReason: Generated<string>;
+  endedReason: Generated<string>
   id: Generated<Int8>
   instrumentId: Int8
   justification: Generated<string>
