@@ -5,6 +5,7 @@ import { afterAll, beforeAll } from 'vitest'
 import { FEATURES } from '../app.module.js'
 import { readSettings, type SettingsValues } from '../platform/config/settings.js'
 import { configureApp, newAdapter } from '../platform/http/app.js'
+import { RouteCheck } from '../platform/http/route-check.js'
 import { PlatformModule } from '../platform/platform.module.js'
 import { Agent, sessionCookie } from './agent.js'
 import { cloneDatabase, type TestDatabase } from './test-database.js'
@@ -13,6 +14,8 @@ export interface TestAppOptions {
   /** the modules under test; every feature when absent */
   imports?: readonly (DynamicModule | Type)[]
   isWorker?: boolean
+  /** to show that the guard refuses them; otherwise they keep the application from starting */
+  allowUndeclaredRoutes?: boolean
   settings?: Partial<SettingsValues>
   /** `(builder) => builder.overrideProvider(MailTransport).useValue(fake)` */
   override?: (builder: TestingModuleBuilder) => TestingModuleBuilder
@@ -54,6 +57,9 @@ export async function createTestApp(options: TestAppOptions = {}): Promise<TestA
       ...(options.imports ?? FEATURES),
     ],
   })
+  if (options.allowUndeclaredRoutes) {
+    builder.overrideProvider(RouteCheck).useValue({})
+  }
   const module = await (options.override?.(builder) ?? builder).compile()
   const app = module.createNestApplication<NestFastifyApplication>(newAdapter(settings), {
     logger: process.env['TEST_LOG'] ? ['error', 'warn', 'log'] : false,
