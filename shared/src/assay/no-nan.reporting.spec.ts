@@ -1,6 +1,7 @@
 import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
 import { AssayError } from './assay-error.js'
+import { fitCalibration } from './fit-calibration.js'
 import { validationFunctions } from './validation-functions.js'
 
 /* No NaN or Infinity leaves the engine, and nothing but an AssayError is thrown, whatever comes in. */
@@ -73,6 +74,16 @@ const instant = fc.oneof(
 const unit = fc.constantFrom('mg/L', 'ug/L', 'mmol/L', 'umol/L', 'ppm', '', null)
 const one = (model: Record<string, fc.Arbitrary<unknown>>) => fc.record(model).map((input) => [input])
 
+const fits = (['linear', 'linear-through-origin', 'quadratic'] as const).map((model) =>
+  fitCalibration({
+    model,
+    points: [0, 1, 2, 4, 8].map((concentration) => ({
+      concentration,
+      absorbance: 0.2 * concentration + (concentration % 2) / 100,
+    })),
+  }),
+)
+
 const inputs: Record<string, fc.Arbitrary<unknown[]>> = {
   applyDilution: one({
     concentration: hostile,
@@ -91,6 +102,18 @@ const inputs: Record<string, fc.Arbitrary<unknown[]>> = {
   }),
   complementaryHue: one({ wavelengthNm: hostile }),
   convertUnit: one({ value: hostile, from: unit, to: unit, molarMass: hostile }),
+  curveBand: fc.tuple(
+    fc.oneof(fc.constantFrom(...fits), hostile),
+    fc.oneof(
+      fc.record({
+        from: hostile,
+        to: hostile,
+        count: fc.oneof(fc.constant(3), hostile),
+        confidence: hostile,
+      }),
+      hostile,
+    ),
+  ),
   diagnoseSlope: one({
     slope: hostile,
     expected: fc.oneof(

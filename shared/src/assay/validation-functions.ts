@@ -1,6 +1,7 @@
 import { cochranTest } from './cochran-test.js'
 import { compareWithLimit } from './compare-with-limit.js'
 import { percentile90, runningAnnualAverage } from './compliance-statistics.js'
+import { curveBand } from './curve-band.js'
 import { chartConstants } from './control-chart-constants.js'
 import { ewmaChart, individualsChart, meanChart, rangeChart } from './control-charts.js'
 import { descriptiveStatistics } from './descriptive-statistics.js'
@@ -68,6 +69,7 @@ export const validationFunctions = table({
   compareWithLimit,
   complementaryHue,
   convertUnit,
+  curveBand,
   descriptiveStatistics,
   detectionLimits,
   detectionLimitsFromBlanks,
