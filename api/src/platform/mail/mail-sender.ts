@@ -51,6 +51,7 @@ export class MailSender {
       return
     }
     await this.db.unwatched((trx) => this.messages.markSent(trx, row))
+    await this.mail.tellSent(row)
   }
 
   @JobHandler(sweepMail)

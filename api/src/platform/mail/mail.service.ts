@@ -48,6 +48,7 @@ const envelope = z.object({
 @Injectable()
 export class MailService {
   private readonly loaders = new Map<string, (id: string) => Promise<Attachment>>()
+  private readonly listeners = new Map<string, (id: string) => Promise<void>>()
 
   constructor(
     private readonly messages: MailRepository,
@@ -59,6 +60,21 @@ export class MailService {
   /** A feature says how its attachments are loaded when a message leaves: `mail.attach('certificate', load)`. */
   attach(kind: string, load: (id: string) => Promise<Attachment>): void {
     this.loaders.set(kind, load)
+  }
+
+  /** A feature says what follows when a message about its thing has left: `mail.whenSent('alert', notify)`. */
+  whenSent(aboutKind: string, listener: (aboutId: string) => Promise<void>): void {
+    this.listeners.set(aboutKind, listener)
+  }
+
+  async tellSent({
+    aboutKind,
+    aboutId,
+  }: {
+    aboutKind: string | null
+    aboutId: string | null
+  }): Promise<void> {
+    if (aboutKind !== null && aboutId !== null) await this.listeners.get(aboutKind)?.(aboutId)
   }
 
   async load({ kind, id }: AttachmentReference): Promise<Attachment> {

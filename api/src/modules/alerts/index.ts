@@ -1,0 +1,2 @@
+export { AlertsModule } from './alerts.module.js'
+export { AlertsService } from './alerts.service.js'
