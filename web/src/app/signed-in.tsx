@@ -90,6 +90,7 @@ function Guarded({ session }: { session: SessionView }) {
     <Outlet />
   ) : (
     <div className="page-sheet">
+      <h1 className="visually-hidden">Not open to your role</h1>
       <Forbidden />
     </div>
   )

@@ -14,6 +14,7 @@ export function NotFoundPage() {
   useTitle('No such page')
   return (
     <div className="page-sheet">
+      <h1 className="visually-hidden">No such page</h1>
       <NotFound />
     </div>
   )

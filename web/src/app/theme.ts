@@ -147,7 +147,7 @@ export function antdTheme(tokens: Tokens): ThemeConfig {
         primaryColor: tokens.onWeir,
         fontWeight: 400,
       },
-      Form: { itemMarginBottom: 16, verticalLabelPadding: '0 0 4px', labelColor: tokens.ink },
+      Form: { itemMarginBottom: 22, verticalLabelPadding: '0 0 4px', labelColor: tokens.ink },
       Modal: { titleFontSize: 18 },
       Select: { optionSelectedBg: tokens.weirSoft },
     },

@@ -3,7 +3,7 @@ import { Form, Input, type FormInstance } from 'antd'
 import { act } from 'react'
 import { describe, expect, it } from 'vitest'
 import { contractProblems } from './contract-problems'
-import { namePathOf, placeProblems } from './form-issues'
+import { clearProblems, namePathOf, placeProblems } from './form-issues'
 import { z } from 'zod'
 
 let form: FormInstance
@@ -76,5 +76,20 @@ describe('contractProblems', () => {
       { path: 'name', message: 'Please fill this in.' },
       { path: 'kind', message: 'Please choose one.' },
     ])
+  })
+})
+
+describe('clearProblems', () => {
+  it('takes the complaint off the field that was changed and leaves the others', async () => {
+    render(<StandardsForm />)
+    await place([
+      { path: 'name', message: 'A lot of this name exists.' },
+      { path: 'standards.2.readings.0', message: 'Use a decimal point: 0.12.' },
+    ])
+    await act(async () => clearProblems(form, { standards: { 2: { readings: ['0.12'] } } }))
+    expect(form.getFieldError(['standards', 2, 'readings', 0])).toEqual([])
+    expect(form.getFieldError('name')).toEqual(['A lot of this name exists.'])
+    await act(async () => clearProblems(form))
+    expect(form.getFieldError('name')).toEqual([])
   })
 })

@@ -41,3 +41,21 @@ export function placeProblems(form: FormInstance, problems: readonly FieldProble
   if (firstName) form.scrollToField(firstName, { block: 'center', focus: true })
   return homeless
 }
+
+function hasPath(value: unknown, path: NamePath): boolean {
+  let at = value
+  for (const step of path) {
+    if (typeof at !== 'object' || at === null || !(step in at)) return false
+    at = (at as Record<string | number, unknown>)[step]
+  }
+  return true
+}
+
+/** A complaint leaves its field with the first key typed there; without `changed`, every complaint leaves. */
+export function clearProblems(form: FormInstance, changed?: unknown): void {
+  const stale = form.getFieldsError().filter((field) => {
+    const name = field.name as NamePath
+    return field.errors.length > 0 && (changed === undefined || hasPath(changed, name))
+  })
+  form.setFields(stale.map((field) => ({ name: field.name, errors: [] })))
+}

@@ -4,7 +4,7 @@ import { useEffect, useState } from 'react'
 import type { CallInput } from './call'
 import { contractProblems } from './contract-problems'
 import { useDraft } from './drafts'
-import { placeProblems } from './form-issues'
+import { clearProblems, placeProblems } from './form-issues'
 import { useLeaveWarning } from './leave-warning'
 import { asProblem, type ProblemError } from './problem-error'
 import { useCall } from './queries'
@@ -65,6 +65,7 @@ export function useEndpointForm<E extends Endpoint, Values extends object>(
     if (mutation.isPending) return
     setProblem(null)
     setHomeless([])
+    clearProblems(form)
     const input = toInput(values)
     const body: unknown = (input as { body?: unknown }).body
     if (endpoint.body) {
@@ -90,7 +91,8 @@ export function useEndpointForm<E extends Endpoint, Values extends object>(
     formProps: {
       form,
       onFinish: (values) => void onFinish(values),
-      onValuesChange: (_, values) => {
+      onValuesChange: (changed, values) => {
+        clearProblems(form, changed)
         setDirty(true)
         if (draft !== undefined) kept.save(values)
       },

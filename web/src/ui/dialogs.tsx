@@ -1,7 +1,7 @@
 import { LIMITS } from '@weirlight/shared/limits'
 import { Button, Form, Input, Modal } from 'antd'
 import { useState, type ReactNode } from 'react'
-import { placeProblems } from '../lib/form-issues'
+import { clearProblems, placeProblems } from '../lib/form-issues'
 import { asProblem, type ProblemError } from '../lib/problem-error'
 import { Strip } from './sheet'
 
@@ -68,6 +68,7 @@ function ActDialog<Values extends object>(props: ActDialogProps<Values>) {
         form={form}
         layout="vertical"
         onFinish={(values) => void submit(values)}
+        onValuesChange={(changed) => clearProblems(form, changed)}
         preserve={false}
         requiredMark={false}
       >

@@ -151,8 +151,13 @@ function ColourAge({ row, batch }: { row: SheetRow; batch: BatchView }) {
   if (!startedAt || !window) return null
   const [first] = row.readings
   if (!first) {
-    const { words, tone } = windowWords({ startedAt, ...window }, now)
-    return <span className={`is-${tone}`}>{words}</span>
+    const { words, tone, isOpen } = windowWords({ startedAt, ...window }, now)
+    const isClosing = isOpen && tone !== 'quiet'
+    return (
+      <span className={`is-${tone}`}>
+        {isOpen && !isClosing ? `now ${durationWords(now - Date.parse(startedAt))}` : words}
+      </span>
+    )
   }
   const age = Date.parse(first.readAt) - Date.parse(startedAt)
   const isOutside = age < window.fromMinutes * MINUTE || age > window.toMinutes * MINUTE
@@ -168,7 +173,7 @@ function VerdictCell({ row }: { row: SheetRow }) {
   if (!verdict) return null
   const flags = flagWords(row, row.live)
   return (
-    <span title={row.live.explanation || undefined}>
+    <span className="verdict-cell" title={row.live.explanation || undefined}>
       <StatusTag mark={verdict.mark}>{verdict.words}</StatusTag>
       {flags.length > 0 && <span className="run-extra quiet">{flags.join(', ')}</span>}
     </span>

@@ -9,7 +9,7 @@ import { STATE_MARKS } from '@weirlight/shared/states'
 import { Button } from 'antd'
 import { useMemo, useState } from 'react'
 import { paths, ProblemError, useCall, useLaboratoryTime, useNotice } from '../../../lib'
-import { Bar, Box, Columns, MarginPage, StatusTag } from '../../../ui'
+import { Bar, Columns, MarginPage, StatusTag } from '../../../ui'
 import { ConfirmDialog, ReasonDialog } from '../../../ui/dialogs'
 import { LeaveDialog } from '../../../ui/form-problem'
 import {
@@ -127,7 +127,7 @@ export function CalibrationWorkbench({ view, method }: { view: CalibrationView; 
           definition={method.definition}
           errorOf={cells.fieldError}
         />
-        <Box isFlush>
+        <div>
           <StandardsGrid
             base={sheet.base}
             draft={draft}
@@ -141,7 +141,7 @@ export function CalibrationWorkbench({ view, method }: { view: CalibrationView; 
             askToLeaveOut={(row) => setAsked({ what: 'leave-out', row })}
             askToRemove={(row) => (hasSavedReadings(row) ? setAsked({ what: 'remove', row }) : remove(row))}
           />
-        </Box>
+        </div>
         <div className="row">
           <Button onClick={() => addRow('standard')} disabled={draft.standards.length >= LIMITS.standards}>
             Add a standard

@@ -8,13 +8,16 @@ interface ChoiceSelectProps {
   /** the words for “none of them” */
   none?: string
   label?: string
+  /** in a row of a grid */
+  isShort?: boolean
 }
 
 /** What cannot be chosen stays in the list and says why. */
-export function ChoiceSelect({ choices, value, onChange, id, none = 'Choose', label }: ChoiceSelectProps) {
+export function ChoiceSelect(props: ChoiceSelectProps) {
+  const { choices, value, onChange, id, none = 'Choose', label, isShort = false } = props
   return (
     <select
-      className="field choice-select"
+      className={isShort ? 'field choice-short' : 'field choice-select'}
       id={id}
       aria-label={label}
       value={value ?? ''}

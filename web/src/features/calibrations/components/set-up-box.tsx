@@ -1,7 +1,7 @@
 import type { MethodDefinition } from '@weirlight/shared/contracts'
 import { Input } from 'antd'
+import { useState } from 'react'
 import { useLaboratoryTime } from '../../../lib'
-import { Box } from '../../../ui'
 import { DecimalInput } from '../../../ui/decimal-input'
 import { MomentInput } from '../../../ui/time-inputs'
 import type { InstrumentRow, MaterialRow } from '../api/calibration-queries'
@@ -26,9 +26,27 @@ export function SetUpBox({ draft, change, instruments, materials, definition, er
   const { today } = useLaboratoryTime()
   const lots = (kinds: readonly MaterialRow['kind'][]) =>
     lotChoices({ lots: materials, kinds, analyte: definition.analyte, today: today() })
+  const hasReadings = draft.standards.some((row) => row.readings.some((text) => text !== ''))
+  const [isOpen, setOpen] = useState(!hasReadings)
+  const named = (list: readonly { id: string; number: string }[], id: string | null) =>
+    list.find((each) => each.id === id)?.number
+  const inAWord = [
+    instruments.find((each) => each.id === draft.instrumentId)?.name,
+    `${draft.cellPathCm} cm`,
+    named(materials, draft.stockLotId) ?? 'no stock lot yet',
+    draft.reagentLotIds.length === 1 ? '1 reagent lot' : `${draft.reagentLotIds.length} reagent lots`,
+    MODEL_WORDS[draft.model].toLowerCase(),
+    draft.colourStartedAt === null && 'colour not started',
+  ]
+    .filter(Boolean)
+    .join(' · ')
   const cell = definition.cells.find((each) => each.pathCm === Number(draft.cellPathCm))
   return (
-    <Box title="Set-up">
+    <details className="box set-up-box" open={isOpen} onToggle={(event) => setOpen(event.currentTarget.open)}>
+      <summary>
+        <h2>Set-up</h2>
+        <span className="quiet">{inAWord}</span>
+      </summary>
       <div className="set-up">
         <Labelled label="Instrument" error={errorOf('instrumentId')}>
           {(id) => (
@@ -138,6 +156,6 @@ export function SetUpBox({ draft, change, instruments, materials, definition, er
           )}
         </Labelled>
       </div>
-    </Box>
+    </details>
   )
 }

@@ -1,4 +1,5 @@
 import type { MethodDefinition } from '@weirlight/shared/contracts'
+import { Dropdown } from 'antd'
 import { useMemo, useRef, useState } from 'react'
 import { useLaboratoryTime } from '../../../lib'
 import { KeyHints } from '../../../ui'
@@ -190,7 +191,14 @@ function useColumns(props: StandardsGridProps): RunGridColumn<DraftStandard>[] {
       unit: 'mg/L',
       isNumber: true,
       text: (row) => decimals(backOf(row)?.concentration, 3).replace('-', '−'),
-      wrap: (row, aligned) => (row.leftOutReason ? <span className="is-left-out">{aligned}</span> : aligned),
+      wrap: (row, aligned) =>
+        row.leftOutReason ? (
+          <span className="is-left-out" title={`Left out: ${row.leftOutReason}`}>
+            {aligned}
+          </span>
+        ) : (
+          aligned
+        ),
     },
     {
       kind: 'show',
@@ -205,6 +213,7 @@ function useColumns(props: StandardsGridProps): RunGridColumn<DraftStandard>[] {
       title: 'Made from',
       cell: (row) => (
         <ChoiceSelect
+          isShort
           label={`Lot, ${row.role === 'second-source' ? 'second source' : `standard ${row.concentration}`}`}
           value={row.lotId}
           choices={lots[row.role]}
@@ -218,34 +227,32 @@ function useColumns(props: StandardsGridProps): RunGridColumn<DraftStandard>[] {
       key: 'acts',
       title: <span className="visually-hidden">What to do with the row</span>,
       isNarrow: true,
-      cell: (row) => (
-        <span className="standard-row-actions">
-          {row.role === 'second-source' ? (
-            <span className="note">second source</span>
-          ) : row.leftOutReason ? (
-            <button
-              type="button"
-              className="bare"
-              title={row.leftOutReason}
-              onClick={() => setRow(row.key, { leftOutReason: '' })}
-            >
-              Left out: take in
-            </button>
-          ) : (
-            <button type="button" className="bare" onClick={() => askToLeaveOut(row)}>
-              Leave out
-            </button>
-          )}
-          <button
-            type="button"
-            className="bare"
-            aria-label={`Remove ${row.role === 'second-source' ? 'the second source' : `the standard ${row.concentration}`}`}
-            onClick={() => askToRemove(row)}
+      cell: (row) => {
+        const name = row.role === 'second-source' ? 'second source' : `standard ${row.concentration || '?'}`
+        const isLeftOut = row.leftOutReason !== ''
+        return (
+          <Dropdown
+            trigger={['click']}
+            menu={{
+              items: [
+                ...(row.role === 'second-source'
+                  ? []
+                  : [{ key: 'out', label: isLeftOut ? 'Take into the curve' : 'Leave out of the curve…' }]),
+                { key: 'remove', label: 'Remove the row…', danger: true },
+              ],
+              onClick: ({ key }) => {
+                if (key === 'remove') askToRemove(row)
+                else if (isLeftOut) setRow(row.key, { leftOutReason: '' })
+                else askToLeaveOut(row)
+              },
+            }}
           >
-            Remove
-          </button>
-        </span>
-      ),
+            <button type="button" className="bare" aria-label={`More for the ${name} mg/L`}>
+              ⋯
+            </button>
+          </Dropdown>
+        )
+      },
     },
   ]
 }

@@ -23,6 +23,7 @@ export function SignInDialog({ email, name }: SignInDialogProps) {
     const element = dialog.current
     if (!element || element.open) return
     element.showModal()
+    element.querySelector<HTMLInputElement>('input[type=password]')?.focus()
     return () => element.close()
   }, [])
 
@@ -70,7 +71,6 @@ export function SignInDialog({ email, name }: SignInDialogProps) {
           name="password"
           type="password"
           autoComplete="current-password"
-          autoFocus
           error={errors['password']}
         />
         <div className="row">
