@@ -45,6 +45,10 @@ export class MaterialsService {
     return this.materials.list(db, {})
   }
 
+  async listByIds(db: Executor, ids: readonly string[]): Promise<MaterialRow[]> {
+    return ids.length === 0 ? [] : this.materials.list(db, { ids })
+  }
+
   /**
    * Before a lot is put to work: each that is unknown, expired, used up or withdrawn, with the reason.
    * `const [first] = await materials.findUnusable(trx, lotIds)`

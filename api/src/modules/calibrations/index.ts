@@ -1,0 +1,5 @@
+export { CalibrationsModule } from './calibrations.module.js'
+export { CalibrationsService, type CalibrationInForce } from './calibrations.service.js'
+export { DraftsService } from './drafts.service.js'
+export { DecisionsService } from './decisions.service.js'
+export { expireCalibrations } from './calibrations.jobs.js'
