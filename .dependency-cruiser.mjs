@@ -6,7 +6,7 @@ export const house = {
     ['history', 'laboratory', 'mail', 'health'],
     ['users', 'session'],
     ['clients', 'programmes', 'methods', 'materials', 'instruments'],
-    ['samples', 'calibrations'],
+    ['samples', 'calibrations', 'bench'],
     ['batches'],
     ['results', 'review'],
     ['alerts', 'certificates', 'charts', 'studies', 'actions'],

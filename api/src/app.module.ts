@@ -1,6 +1,10 @@
 import { Module, type DynamicModule } from '@nestjs/common'
+import { BenchModule } from './modules/bench/index.js'
+import { ClientsModule } from './modules/clients/index.js'
 import { HistoryModule } from './modules/history/index.js'
+import { InstrumentsModule } from './modules/instruments/index.js'
 import { LaboratoryModule } from './modules/laboratory/index.js'
+import { MaterialsModule } from './modules/materials/index.js'
 import { MethodsModule } from './modules/methods/index.js'
 import { ProgrammesModule } from './modules/programmes/index.js'
 import { UsersModule } from './modules/users/index.js'
@@ -13,8 +17,12 @@ export const FEATURES: NonNullable<DynamicModule['imports']> = [
   HistoryModule,
   LaboratoryModule,
   UsersModule,
+  ClientsModule,
   MethodsModule,
   ProgrammesModule,
+  MaterialsModule,
+  InstrumentsModule,
+  BenchModule,
 ]
 
 @Module({})

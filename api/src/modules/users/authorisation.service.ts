@@ -1,6 +1,10 @@
 import { Injectable } from '@nestjs/common'
 import { type Executor, notAllowedNow } from '../../platform/index.js'
-import { AuthorisationsRepository, type AuthorisedActivity } from './authorisations.repository.js'
+import {
+  AuthorisationsRepository,
+  type AuthorisedActivity,
+  type AuthorisedPerson,
+} from './authorisations.repository.js'
 
 const WORDS: Record<AuthorisedActivity, string> = {
   read: 'to measure by',
@@ -18,6 +22,11 @@ export class AuthorisationService {
     asked: { userId: string; methodId: string; activity: AuthorisedActivity },
   ): Promise<boolean> {
     return (await this.authorisations.findBest(db, asked))?.inForce ?? false
+  }
+
+  /** Everyone active who may do it today, by any method. */
+  async listInForce(db: Executor, activity: AuthorisedActivity): Promise<AuthorisedPerson[]> {
+    return this.authorisations.listInForce(db, activity)
   }
 
   /** @throws not-allowed-now with a sentence that says what is missing */

@@ -16,6 +16,13 @@ export interface AuthorisationRow {
   inForce: boolean
 }
 
+export interface AuthorisedPerson {
+  userId: string
+  name: string
+  methodId: string
+  validUntil: string
+}
+
 const today = sql`(weirlight_now() at time zone coalesce((select time_zone from laboratory), 'UTC'))::date`
 
 @Injectable()
@@ -27,6 +34,16 @@ export class AuthorisationsRepository {
       from authorisations a join methods m on m.id = a.method_id
       ${userId === undefined ? sql`` : sql`where a.user_id = ${userId}`}
       order by m.title, a.activity, a.valid_from desc, a.id desc`.execute(db)
+    return rows
+  }
+
+  /** Active people whose authorisation holds today. */
+  async listInForce(db: Executor, activity: AuthorisedActivity): Promise<AuthorisedPerson[]> {
+    const { rows } = await sql<AuthorisedPerson>`
+      select u.id as user_id, u.name, a.method_id, max(a.valid_until) as valid_until
+      from authorisations a join users u on u.id = a.user_id
+      where a.activity = ${activity} and u.status = 'active' and ${today} between a.valid_from and a.valid_until
+      group by u.id, u.name, a.method_id order by u.name, u.id`.execute(db)
     return rows
   }
 

@@ -1,0 +1,2 @@
+export { BenchModule } from './bench.module.js'
+export { BenchService } from './bench.service.js'
