@@ -43,8 +43,9 @@ interface Settled {
  * 0.010), else as it stands up to three significant digits, else two, rounded up so that "<" stays true.
  */
 function limitText(limit: number, rounding: Rounding): string {
-  const exact = new Decimal(limit)
-  if (roundDecimal(exact, rounding).eq(exact)) return roundReported(limit, rounding)
+  // three times 0.1 comes in as 0.30000000000000004: twelve digits are the limit, the rest is dust
+  const exact = new Decimal(limit).toSignificantDigits(12)
+  if (roundDecimal(exact, rounding).eq(exact)) return roundReported(exact.toNumber(), rounding)
   if (exact.sd() <= 3) return exact.toFixed()
   return exact.toSignificantDigits(2, Decimal.ROUND_UP).toFixed()
 }

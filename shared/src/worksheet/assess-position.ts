@@ -50,6 +50,9 @@ const NOTHING: Assessment = {
 }
 
 const VERDICT_WEIGHT = { below: 0, 'conditional-below': 1, 'conditional-above': 2, above: 3 } as const
+const OVER = VERDICT_WEIGHT['conditional-above']
+const CANNOT_SEE =
+  'Not quantified, and the method’s limit lies above the limit to compare with: nothing can be said. Use a longer cell or a more sensitive method.'
 
 /**
  * What the readings of one position of a run come to: mean absorbance, concentration in the sample (mg/L, unrounded),
@@ -90,12 +93,14 @@ function assess(position: PositionToAssess, rules: AssessmentRules): Assessment 
   const { unit } =
     position.reporting.displayUnit === 'ug/L' ? { unit: 'ug/L' as const } : { unit: 'mg/L' as const }
   const shown = (value: number) => convertUnit({ value, from: 'mg/L', to: unit })
+  // a curve may see less than the reporting limit promises; then nothing below what it detects is quantified
+  const quantification = Math.max(rules.reportingLimit, rules.detectionLimit)
   const reported = reportValue({
     concentration: shown(inSample.concentration),
     expandedUncertainty: shown(expandedUncertainty),
     limits: {
       detection: shown(rules.detectionLimit * position.dilution),
-      quantification: shown(rules.reportingLimit * position.dilution),
+      quantification: shown(quantification * position.dilution),
     },
     nonDetect: position.reporting.nonDetect as NonDetectRule,
     rounding: { to: 'significant', digits: position.reporting.digits, ties: position.reporting.ties },
@@ -122,23 +127,30 @@ function assess(position: PositionToAssess, rules: AssessmentRules): Assessment 
 
 /** Every limit is compared; shown is the highest one exceeded, or the lowest where none is. */
 function judge(base: Assessment, position: PositionToAssess): Partial<Assessment> {
-  const compared = position.limits.map((limit) => {
-    const toLimit = (value: number) => convertUnit({ value, from: 'mg/L', to: limit.unit })
-    const outcome = compareWithLimit({
-      value: toLimit(base.numericForCompliance ?? 0),
-      expandedUncertainty: toLimit(base.expandedUncertainty ?? 0),
-      limit: Number(limit.value),
-      rule: limit.rule,
-      rounding: { to: 'significant', digits: limit.digits, ties: position.reporting.ties },
+  const isBelowText = base.reportedText?.startsWith('<') ?? false
+  const compared = position.limits
+    .map((limit) => {
+      const toLimit = (value: number) => convertUnit({ value, from: 'mg/L', to: limit.unit })
+      const outcome = compareWithLimit({
+        value: toLimit(base.numericForCompliance ?? 0),
+        expandedUncertainty: toLimit(base.expandedUncertainty ?? 0),
+        limit: Number(limit.value),
+        rule: limit.rule,
+        rounding: { to: 'significant', digits: limit.digits, ties: position.reporting.ties },
+      })
+      return {
+        limit,
+        outcome,
+        inMilligrams: convertUnit({ value: Number(limit.value), from: limit.unit, to: 'mg/L' }),
+      }
     })
-    return {
-      limit,
-      outcome,
-      inMilligrams: convertUnit({ value: Number(limit.value), from: limit.unit, to: 'mg/L' }),
-    }
-  })
+    // a "<" that only stands above the limit because the method cannot see it is no finding
+    .filter(({ outcome }) => !(isBelowText && VERDICT_WEIGHT[outcome.verdict] >= OVER))
+  if (compared.length === 0 && position.limits.length > 0) {
+    return { flags: [...base.flags, 'quantification-above-limit'], explanation: CANNOT_SEE }
+  }
   const worst = Math.max(...compared.map(({ outcome }) => VERDICT_WEIGHT[outcome.verdict]))
-  const isOver = worst >= VERDICT_WEIGHT['conditional-above']
+  const isOver = worst >= OVER
   const [shown] = compared
     .filter(({ outcome }) => VERDICT_WEIGHT[outcome.verdict] === worst)
     .sort((a, b) => (isOver ? b.inMilligrams - a.inMilligrams : a.inMilligrams - b.inMilligrams))
