@@ -13,6 +13,8 @@ import { SettingsModule } from './config/settings.module.js'
 import { Settings, type SettingsValues } from './config/settings.js'
 import { Database } from './database/database.js'
 import { openPool } from './database/pool.js'
+import { RoleCheck } from './database/role-check.js'
+import { RoleRepository } from './database/role.repository.js'
 import { DocumentsService } from './documents/documents.service.js'
 import { EventsModule } from './events/events.module.js'
 import { HealthController } from './health/health.controller.js'
@@ -46,9 +48,12 @@ export interface PlatformOptions {
   isWorker: boolean
   /** refuses to start while contracts, routes, jobs and handlers do not fit; off in tests of one module */
   isStrict: boolean
+  /** for the loader of the demonstration's past alone */
+  isOwnerAllowed?: boolean
 }
 
 const services = [
+  RoleRepository,
   Clock,
   ActorsRepository,
   SessionService,
@@ -85,6 +90,12 @@ export class PlatformModule {
         inject: [JobHandlers, JobsRepository, Settings],
         useFactory: (handlers: JobHandlers, repository: JobsRepository, settings: Settings) =>
           new JobsService(handlers, repository, options, settings),
+      },
+      {
+        provide: RoleCheck,
+        inject: [Database, RoleRepository],
+        useFactory: (db: Database, roles: RoleRepository) =>
+          new RoleCheck(db, roles, { isOwnerAllowed: options.isOwnerAllowed ?? false }),
       },
       {
         provide: RouteCheck,

@@ -3,6 +3,7 @@ import type { NestFastifyApplication } from '@nestjs/platform-fastify'
 import { Test, type TestingModuleBuilder } from '@nestjs/testing'
 import { afterAll, beforeAll } from 'vitest'
 import { FEATURES } from '../app.module.js'
+import { Clock } from '../platform/clock/clock.js'
 import { readSettings, type SettingsValues } from '../platform/config/settings.js'
 import { configureApp, newAdapter } from '../platform/http/app.js'
 import { RouteCheck } from '../platform/http/route-check.js'
@@ -17,6 +18,8 @@ export interface TestAppOptions {
   /** to show that the guard refuses them; otherwise they keep the application from starting */
   allowUndeclaredRoutes?: boolean
   settings?: Partial<SettingsValues>
+  /** a database that is there already, for a second process beside the first; it is not dropped */
+  database?: TestDatabase
   /** `(builder) => builder.overrideProvider(MailTransport).useValue(fake)` */
   override?: (builder: TestingModuleBuilder) => TestingModuleBuilder
 }
@@ -49,7 +52,7 @@ export function testSettings(databaseUrl: string, changes: Partial<SettingsValue
 }
 
 export async function createTestApp(options: TestAppOptions = {}): Promise<TestApp> {
-  const database = await cloneDatabase()
+  const database = options.database ?? (await cloneDatabase())
   const settings = testSettings(database.appUrl, options.settings)
   const builder = Test.createTestingModule({
     imports: [
@@ -57,6 +60,8 @@ export async function createTestApp(options: TestAppOptions = {}): Promise<TestA
       ...(options.imports ?? FEATURES),
     ],
   })
+  // one clock for the services and for the database of the test: pinning it pins both
+  builder.overrideProvider(Clock).useValue(database.clock)
   if (options.allowUndeclaredRoutes) {
     builder.overrideProvider(RouteCheck).useValue({})
   }
@@ -76,7 +81,7 @@ export async function createTestApp(options: TestAppOptions = {}): Promise<TestA
     as: async ({ userId }) => new Agent(app, await sessionCookie({ database, settings, userId })),
     close: async () => {
       await app.close()
-      await database.drop()
+      if (!options.database) await database.drop()
     },
   }
 }

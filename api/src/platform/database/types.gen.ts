@@ -3,642 +3,641 @@
  * Please do not edit it manually.
  */
 
-import type { ColumnType } from 'kysely'
+import type { ColumnType } from "kysely";
 
-export type Generated<T> =
-  T extends ColumnType<infer S, infer I, infer U>
-    ? ColumnType<S, I | undefined, U>
-    : ColumnType<T, T | undefined, T>
+export type Generated<T> = T extends ColumnType<infer S, infer I, infer U>
+  ? ColumnType<S, I | undefined, U>
+  : ColumnType<T, T | undefined, T>;
 
-export type Int8 = ColumnType<string, bigint | number | string, bigint | number | string>
+export type Int8 = ColumnType<string, bigint | number | string, bigint | number | string>;
 
-export type Json = JsonValue
+export type Json = JsonValue;
 
-export type JsonArray = JsonValue[]
+export type JsonArray = JsonValue[];
 
 export type JsonObject = {
-  [x: string]: JsonValue | undefined
-}
+  [x: string]: JsonValue | undefined;
+};
 
-export type JsonPrimitive = boolean | number | string | null
+export type JsonPrimitive = boolean | number | string | null;
 
-export type JsonValue = JsonArray | JsonObject | JsonPrimitive
+export type JsonValue = JsonArray | JsonObject | JsonPrimitive;
 
-export type Numeric = ColumnType<string, number | string, number | string>
+export type Numeric = ColumnType<string, number | string, number | string>;
 
-export type Timestamp = ColumnType<Date, Date | string, Date | string>
+export type Timestamp = ColumnType<Date, Date | string, Date | string>;
 
 export interface Alerts {
-  acknowledgedAt: Timestamp | null
-  acknowledgedBy: Int8 | null
-  acknowledgement: Generated<string>
-  answerDueAt: Timestamp | null
-  clientId: Int8
-  closedAt: Timestamp | null
-  closedBy: Int8 | null
-  closingNote: Generated<string>
-  id: Generated<Int8>
-  notifiedAt: Timestamp | null
-  number: string
-  raisedAt: Generated<Timestamp>
-  resultId: Int8
-  state: Generated<string>
-  version: Generated<number>
+  acknowledgedAt: Timestamp | null;
+  acknowledgedBy: Int8 | null;
+  acknowledgement: Generated<string>;
+  answerDueAt: Timestamp | null;
+  clientId: Int8;
+  closedAt: Timestamp | null;
+  closedBy: Int8 | null;
+  closingNote: Generated<string>;
+  id: Generated<Int8>;
+  notifiedAt: Timestamp | null;
+  number: string;
+  raisedAt: Generated<Timestamp>;
+  resultId: Int8;
+  state: Generated<string>;
+  version: Generated<number>;
 }
 
 export interface Authorisations {
-  activity: string
-  evidence: string
-  id: Generated<Int8>
-  methodId: Int8
-  userId: Int8
-  validFrom: string
-  validUntil: string
+  activity: string;
+  evidence: string;
+  id: Generated<Int8>;
+  methodId: Int8;
+  userId: Int8;
+  validFrom: string;
+  validUntil: string;
 }
 
 export interface Batches {
-  aboveLimit: Generated<number>
-  calibrationId: Int8
-  colourStartedAt: Timestamp | null
-  draftId: string | null
-  id: Generated<Int8>
-  instrumentId: Int8
-  methodId: Int8
-  note: Generated<string>
-  number: string
-  openedAt: Generated<Timestamp>
-  openedBy: Int8
-  openFindings: Generated<number>
-  positionsRead: Generated<number>
-  releasedAt: Timestamp | null
-  releasedBy: Int8 | null
-  replicates: number
-  returnedBy: Int8 | null
-  returnedReason: Generated<string>
-  reviewComment: Generated<string>
-  reviewedAt: Timestamp | null
-  reviewedBy: Int8 | null
-  rules: Json
-  state: Generated<string>
-  submittedAt: Timestamp | null
-  submittedBy: Int8 | null
-  version: Generated<number>
+  aboveLimit: Generated<number>;
+  calibrationId: Int8;
+  colourStartedAt: Timestamp | null;
+  draftId: string | null;
+  id: Generated<Int8>;
+  instrumentId: Int8;
+  methodId: Int8;
+  note: Generated<string>;
+  number: string;
+  openedAt: Generated<Timestamp>;
+  openedBy: Int8;
+  openFindings: Generated<number>;
+  positionsRead: Generated<number>;
+  releasedAt: Timestamp | null;
+  releasedBy: Int8 | null;
+  replicates: number;
+  returnedBy: Int8 | null;
+  returnedReason: Generated<string>;
+  reviewComment: Generated<string>;
+  reviewedAt: Timestamp | null;
+  reviewedBy: Int8 | null;
+  rules: Json;
+  state: Generated<string>;
+  submittedAt: Timestamp | null;
+  submittedBy: Int8 | null;
+  version: Generated<number>;
 }
 
 export interface BatchLots {
-  batchId: Int8
-  lotId: Int8
+  batchId: Int8;
+  lotId: Int8;
 }
 
 export interface BatchWatchers {
-  batchId: Int8
-  seenAt: Generated<Timestamp>
-  userId: Int8
+  batchId: Int8;
+  seenAt: Generated<Timestamp>;
+  userId: Int8;
 }
 
 export interface CalibrationLots {
-  calibrationId: Int8
-  lotId: Int8
+  calibrationId: Int8;
+  lotId: Int8;
 }
 
 export interface CalibrationReadings {
-  absorbance: Numeric | null
-  absorbanceText: string | null
-  calibrationId: Int8
-  id: Generated<Int8>
-  readAt: Generated<Timestamp>
-  readBy: Int8
-  reason: Generated<string>
-  replicate: number
-  standardId: Int8
-  supersedesId: Int8 | null
+  absorbance: Numeric | null;
+  absorbanceText: string | null;
+  calibrationId: Int8;
+  id: Generated<Int8>;
+  readAt: Generated<Timestamp>;
+  readBy: Int8;
+  reason: Generated<string>;
+  replicate: number;
+  standardId: Int8;
+  supersedesId: Int8 | null;
 }
 
 export interface Calibrations {
-  cellPathCm: string
-  colourStartedAt: Timestamp | null
-  copiedFrom: Int8 | null
-  createdAt: Generated<Timestamp>
-  criteria: Generated<Json>
-  draftId: string | null
-  endedAt: Timestamp | null
-  endedReason: Generated<string>
-  id: Generated<Int8>
-  instrumentId: Int8
-  justification: Generated<string>
-  methodId: Int8
-  model: string
-  note: Generated<string>
-  number: string
-  preparedBy: Int8
-  replacedBy: Int8 | null
-  returnedBy: Int8 | null
-  returnedReason: Generated<string>
-  signedAt: Timestamp | null
-  signedBy: Int8 | null
-  state: Generated<string>
-  stockLotId: Int8 | null
-  stored: Json | null
-  submittedAt: Timestamp | null
-  temperatureC: Generated<string>
-  validUntil: Timestamp | null
-  version: Generated<number>
-  weighting: string
+  cellPathCm: string;
+  colourStartedAt: Timestamp | null;
+  copiedFrom: Int8 | null;
+  createdAt: Generated<Timestamp>;
+  criteria: Generated<Json>;
+  draftId: string | null;
+  endedAt: Timestamp | null;
+  endedReason: Generated<string>;
+  id: Generated<Int8>;
+  instrumentId: Int8;
+  justification: Generated<string>;
+  methodId: Int8;
+  model: string;
+  note: Generated<string>;
+  number: string;
+  preparedBy: Int8;
+  replacedBy: Int8 | null;
+  returnedBy: Int8 | null;
+  returnedReason: Generated<string>;
+  signedAt: Timestamp | null;
+  signedBy: Int8 | null;
+  state: Generated<string>;
+  stockLotId: Int8 | null;
+  stored: Json | null;
+  submittedAt: Timestamp | null;
+  temperatureC: Generated<string>;
+  validUntil: Timestamp | null;
+  version: Generated<number>;
+  weighting: string;
 }
 
 export interface CalibrationStandards {
-  calibrationId: Int8
-  concentration: string
-  id: Generated<Int8>
-  leftOutReason: Generated<string>
-  lotId: Int8 | null
-  position: number
-  removed: Generated<boolean>
-  role: string
+  calibrationId: Int8;
+  concentration: string;
+  id: Generated<Int8>;
+  leftOutReason: Generated<string>;
+  lotId: Int8 | null;
+  position: number;
+  removed: Generated<boolean>;
+  role: string;
 }
 
 export interface CertificateDocuments {
-  certificateId: Int8
-  pdf: Buffer
-  renderedAt: Generated<Timestamp>
-  sha256: string
+  certificateId: Int8;
+  pdf: Buffer;
+  renderedAt: Generated<Timestamp>;
+  sha256: string;
 }
 
 export interface CertificateOpenings {
-  at: Generated<Timestamp>
-  certificateId: Int8
-  id: Generated<Int8>
-  userId: Int8
+  at: Generated<Timestamp>;
+  certificateId: Int8;
+  id: Generated<Int8>;
+  userId: Int8;
 }
 
 export interface CertificateResults {
-  certificateId: Int8
-  resultId: Int8
+  certificateId: Int8;
+  resultId: Int8;
 }
 
 export interface Certificates {
-  amendment: Generated<number>
-  amendsId: Int8 | null
-  clientId: Int8
-  id: Generated<Int8>
-  issuedAt: Generated<Timestamp>
-  issuedBy: Int8
-  number: string
-  reason: Generated<string>
-  sampleId: Int8
-  snapshot: Json
-  state: Generated<string>
-  verificationCode: string
-  version: Generated<number>
-  withdrawnReason: Generated<string>
+  amendment: Generated<number>;
+  amendsId: Int8 | null;
+  clientId: Int8;
+  id: Generated<Int8>;
+  issuedAt: Generated<Timestamp>;
+  issuedBy: Int8;
+  number: string;
+  reason: Generated<string>;
+  sampleId: Int8;
+  snapshot: Json;
+  state: Generated<string>;
+  verificationCode: string;
+  version: Generated<number>;
+  withdrawnReason: Generated<string>;
 }
 
 export interface Clients {
-  active: Generated<boolean>
-  address: Generated<string>
-  agencyName: Generated<string>
-  agencyPhone: Generated<string>
-  code: string
-  id: Generated<Int8>
-  name: string
-  programmeId: Int8
-  systemId: Generated<string>
-  version: Generated<number>
+  active: Generated<boolean>;
+  address: Generated<string>;
+  agencyName: Generated<string>;
+  agencyPhone: Generated<string>;
+  code: string;
+  id: Generated<Int8>;
+  name: string;
+  programmeId: Int8;
+  systemId: Generated<string>;
+  version: Generated<number>;
 }
 
 export interface Clocks {
-  appliesTo: Generated<string>
-  code: string
-  definition: Generated<Json>
-  duty: string
-  edition: string
-  hours: Numeric
-  id: Generated<Int8>
-  jurisdiction: string
-  mark: string
-  source: string
-  startingEvent: string
-  who: Generated<string>
+  appliesTo: Generated<string>;
+  code: string;
+  definition: Generated<Json>;
+  duty: string;
+  edition: string;
+  hours: Numeric;
+  id: Generated<Int8>;
+  jurisdiction: string;
+  mark: string;
+  source: string;
+  startingEvent: string;
+  who: Generated<string>;
 }
 
 export interface Contacts {
-  active: Generated<boolean>
-  clientId: Int8
-  email: string
-  getsAlerts: boolean
-  getsCertificates: boolean
-  id: Generated<Int8>
-  name: string
-  version: Generated<number>
+  active: Generated<boolean>;
+  clientId: Int8;
+  email: string;
+  getsAlerts: boolean;
+  getsCertificates: boolean;
+  id: Generated<Int8>;
+  name: string;
+  version: Generated<number>;
 }
 
 export interface Determinations {
-  analyte: string
-  clientId: Int8
-  form: string
-  holdingDueAt: Timestamp
-  holdingRule: string
-  id: Generated<Int8>
-  methodId: Int8
-  sampleId: Int8
-  state: Generated<string>
-  version: Generated<number>
-  withdrawnReason: Generated<string>
+  analyte: string;
+  clientId: Int8;
+  form: string;
+  holdingDueAt: Timestamp;
+  holdingRule: string;
+  id: Generated<Int8>;
+  methodId: Int8;
+  sampleId: Int8;
+  state: Generated<string>;
+  version: Generated<number>;
+  withdrawnReason: Generated<string>;
 }
 
 export interface FindingActions {
-  at: Generated<Timestamp>
-  batchId: Int8
-  byId: Int8
-  findingId: string
-  id: Generated<Int8>
-  kind: string
-  text: string
+  at: Generated<Timestamp>;
+  batchId: Int8;
+  byId: Int8;
+  findingId: string;
+  id: Generated<Int8>;
+  kind: string;
+  text: string;
 }
 
 export interface History {
-  action: string
-  actorId: Int8 | null
-  actorName: string
-  actorRole: string
-  at: Timestamp
-  clientId: Int8 | null
-  id: Generated<Int8>
-  new: Json | null
-  old: Json | null
-  operation: string
-  reason: string | null
-  requestId: string | null
-  thing: string
-  thingId: Int8 | null
-  thingNumber: string | null
+  action: string;
+  actorId: Int8 | null;
+  actorName: string;
+  actorRole: string;
+  at: Timestamp;
+  clientId: Int8 | null;
+  id: Generated<Int8>;
+  new: Json | null;
+  old: Json | null;
+  operation: string;
+  reason: string | null;
+  requestId: string | null;
+  thing: string;
+  thingId: Int8 | null;
+  thingNumber: string | null;
 }
 
 export interface HistorySeals {
-  entries: Int8
-  firstId: Int8
-  head: Buffer
-  lastId: Int8
-  number: Int8
-  previousHead: Buffer
-  root: Buffer
-  sealedAt: Timestamp
+  entries: Int8;
+  firstId: Int8;
+  head: Buffer;
+  lastId: Int8;
+  number: Int8;
+  previousHead: Buffer;
+  root: Buffer;
+  sealedAt: Timestamp;
 }
 
 export interface InstrumentChecks {
-  checkedAt: Generated<Timestamp>
-  checkedBy: Int8
-  found: string
-  id: Generated<Int8>
-  instrumentId: Int8
-  kind: string
-  nextDueOn: string
-  nominal: string
-  note: Generated<string>
-  passed: boolean
-  reference: string
-  tolerance: string
-  unit: string
+  checkedAt: Generated<Timestamp>;
+  checkedBy: Int8;
+  found: string;
+  id: Generated<Int8>;
+  instrumentId: Int8;
+  kind: string;
+  nextDueOn: string;
+  nominal: string;
+  note: Generated<string>;
+  passed: boolean;
+  reference: string;
+  tolerance: string;
+  unit: string;
 }
 
 export interface Instruments {
-  bandwidthNm: string
-  id: Generated<Int8>
-  kind: string
-  location: string
-  name: string
-  number: string
-  serial: string
-  state: Generated<string>
-  version: Generated<number>
+  bandwidthNm: string;
+  id: Generated<Int8>;
+  kind: string;
+  location: string;
+  name: string;
+  number: string;
+  serial: string;
+  state: Generated<string>;
+  version: Generated<number>;
 }
 
 export interface Laboratory {
-  accreditation: string
-  address: string
-  email: string
-  id: Generated<Int8>
-  name: string
-  phone: string
-  timeZone: string
-  version: Generated<number>
+  accreditation: string;
+  address: string;
+  email: string;
+  id: Generated<Int8>;
+  name: string;
+  phone: string;
+  timeZone: string;
+  version: Generated<number>;
 }
 
 export interface Limits {
-  analyte: string
-  code: string | null
-  decisionRule: string
-  definition: Generated<Json>
-  digits: number
-  edition: string
-  form: string
-  guardFactor: Numeric | null
-  id: Generated<Int8>
-  kind: string
-  mark: string
-  name: string
-  programmeId: Int8
-  raisesAlert: Generated<boolean>
-  source: string
-  unit: string
-  validFrom: string
-  validUntil: string | null
-  value: Numeric
-  valueText: string
+  analyte: string;
+  code: string | null;
+  decisionRule: string;
+  definition: Generated<Json>;
+  digits: number;
+  edition: string;
+  form: string;
+  guardFactor: Numeric | null;
+  id: Generated<Int8>;
+  kind: string;
+  mark: string;
+  name: string;
+  programmeId: Int8;
+  raisesAlert: Generated<boolean>;
+  source: string;
+  unit: string;
+  validFrom: string;
+  validUntil: string | null;
+  value: Numeric;
+  valueText: string;
 }
 
 export interface MailMessages {
-  aboutId: Int8 | null
-  aboutKind: string | null
-  attachments: Generated<Json>
-  attempts: Generated<number>
-  bodyHtml: string | null
-  bodyText: string
-  claimedAt: Timestamp | null
-  clientId: Int8 | null
-  createdAt: Generated<Timestamp>
-  failedAt: Timestamp | null
-  id: Generated<Int8>
-  key: string
-  lastError: string | null
-  messageId: string
-  nextAttemptAt: Generated<Timestamp>
-  recipient: string
-  sentAt: Timestamp | null
-  state: Generated<string>
-  subject: string
+  aboutId: Int8 | null;
+  aboutKind: string | null;
+  attachments: Generated<Json>;
+  attempts: Generated<number>;
+  bodyHtml: string | null;
+  bodyText: string;
+  claimedAt: Timestamp | null;
+  clientId: Int8 | null;
+  createdAt: Generated<Timestamp>;
+  failedAt: Timestamp | null;
+  id: Generated<Int8>;
+  key: string;
+  lastError: string | null;
+  messageId: string;
+  nextAttemptAt: Generated<Timestamp>;
+  recipient: string;
+  sentAt: Timestamp | null;
+  state: Generated<string>;
+  subject: string;
 }
 
 export interface MaterialLots {
-  analyte: string | null
-  certificateRef: Generated<string>
-  concentration: string | null
-  expiresOn: string
-  hazards: Generated<string>
-  id: Generated<Int8>
-  kind: string
-  lotCode: string
-  name: string
-  number: string
-  openedOn: string | null
-  parentId: Int8 | null
-  preparedAt: Generated<Timestamp>
-  preparedBy: Int8 | null
-  producer: string
-  receivedOn: string
-  recipe: Generated<string>
-  state: Generated<string>
-  storage: Generated<string>
-  uncertainty: string | null
-  version: Generated<number>
+  analyte: string | null;
+  certificateRef: Generated<string>;
+  concentration: string | null;
+  expiresOn: string;
+  hazards: Generated<string>;
+  id: Generated<Int8>;
+  kind: string;
+  lotCode: string;
+  name: string;
+  number: string;
+  openedOn: string | null;
+  parentId: Int8 | null;
+  preparedAt: Generated<Timestamp>;
+  preparedBy: Int8 | null;
+  producer: string;
+  receivedOn: string;
+  recipe: Generated<string>;
+  state: Generated<string>;
+  storage: Generated<string>;
+  uncertainty: string | null;
+  version: Generated<number>;
 }
 
 export interface Methods {
-  active: Generated<boolean>
-  analyte: string
-  code: string
-  definition: Json
-  edition: string
-  form: string
-  id: Generated<Int8>
-  title: string
-  version: Generated<number>
-  wavelengthNm: Numeric
+  active: Generated<boolean>;
+  analyte: string;
+  code: string;
+  definition: Json;
+  edition: string;
+  form: string;
+  id: Generated<Int8>;
+  title: string;
+  version: Generated<number>;
+  wavelengthNm: Numeric;
 }
 
 export interface PositionReadings {
-  absorbance: Numeric
-  absorbanceText: string
-  batchId: Int8
-  id: Generated<Int8>
-  positionId: Int8
-  readAt: Generated<Timestamp>
-  readBy: Int8
-  reason: Generated<string>
-  replicate: number
-  source: string
-  supersedesId: Int8 | null
-  uploadId: Int8 | null
+  absorbance: Numeric;
+  absorbanceText: string;
+  batchId: Int8;
+  id: Generated<Int8>;
+  positionId: Int8;
+  readAt: Generated<Timestamp>;
+  readBy: Int8;
+  reason: Generated<string>;
+  replicate: number;
+  source: string;
+  supersedesId: Int8 | null;
+  uploadId: Int8 | null;
 }
 
 export interface Positions {
-  added: string | null
-  batchId: Int8
-  determinationId: Int8 | null
-  dilution: Generated<string>
-  expected: string | null
-  id: Generated<Int8>
-  kind: string
-  limits: Generated<Json>
-  lotId: Int8 | null
-  note: Generated<string>
-  ofPositionId: Int8 | null
-  position: number
-  reporting: Generated<Json>
-  version: Generated<number>
+  added: string | null;
+  batchId: Int8;
+  determinationId: Int8 | null;
+  dilution: Generated<string>;
+  expected: string | null;
+  id: Generated<Int8>;
+  kind: string;
+  limits: Generated<Json>;
+  lotId: Int8 | null;
+  note: Generated<string>;
+  ofPositionId: Int8 | null;
+  position: number;
+  reporting: Generated<Json>;
+  version: Generated<number>;
 }
 
 export interface Programmes {
-  code: string
-  definition: Generated<Json>
-  displayUnit: string
-  id: Generated<Int8>
-  name: string
-  nonDetect: string
-  note: Generated<string>
-  ties: string
-  version: Generated<number>
+  code: string;
+  definition: Generated<Json>;
+  displayUnit: string;
+  id: Generated<Int8>;
+  name: string;
+  nonDetect: string;
+  note: Generated<string>;
+  ties: string;
+  version: Generated<number>;
 }
 
 export interface Results {
-  analyte: string
-  batchId: Int8
-  calibrationId: Int8
-  clientId: Int8
-  collectedAt: Timestamp
-  concentration: number
-  determinationId: Int8
-  engineVersion: string
-  expandedUncertainty: number
-  explanation: Generated<string>
-  flags: Generated<string[]>
-  form: string
-  id: Generated<Int8>
-  inputs: Json
-  limitId: Int8 | null
-  limitSnapshot: Json | null
-  measuredAt: Generated<Timestamp>
-  methodId: Int8
-  numericForCompliance: number | null
-  positionId: Int8
-  releasedAt: Timestamp | null
-  releasedBy: Int8 | null
-  reportedText: string
-  reviewedAt: Timestamp | null
-  reviewedBy: Int8 | null
-  sampleId: Int8
-  samplingPointId: Int8
-  standardError: number
-  state: Generated<string>
-  uncertaintyText: Generated<string>
-  unit: string
-  verdict: string | null
-  version: Generated<number>
+  analyte: string;
+  batchId: Int8;
+  calibrationId: Int8;
+  clientId: Int8;
+  collectedAt: Timestamp;
+  concentration: number;
+  determinationId: Int8;
+  engineVersion: string;
+  expandedUncertainty: number;
+  explanation: Generated<string>;
+  flags: Generated<string[]>;
+  form: string;
+  id: Generated<Int8>;
+  inputs: Json;
+  limitId: Int8 | null;
+  limitSnapshot: Json | null;
+  measuredAt: Generated<Timestamp>;
+  methodId: Int8;
+  numericForCompliance: number | null;
+  positionId: Int8;
+  releasedAt: Timestamp | null;
+  releasedBy: Int8 | null;
+  reportedText: string;
+  reviewedAt: Timestamp | null;
+  reviewedBy: Int8 | null;
+  sampleId: Int8;
+  samplingPointId: Int8;
+  standardError: number;
+  state: Generated<string>;
+  uncertaintyText: Generated<string>;
+  unit: string;
+  verdict: string | null;
+  version: Generated<number>;
 }
 
 export interface Samples {
-  acceptanceReason: Generated<string>
-  clientConsent: Generated<string>
-  clientId: Int8
-  collectedAt: Timestamp
-  collectedBy: string
-  condition: Generated<string>
-  container: string
-  createdAt: Generated<Timestamp>
-  draftId: string | null
-  filteredInField: Generated<boolean>
-  id: Generated<Int8>
-  kind: string
-  number: string
-  ph: Generated<string>
-  preservation: string
-  purpose: string
-  qualified: Generated<boolean>
-  receivedAt: Timestamp | null
-  receivedBy: Int8 | null
-  remarks: Generated<string>
-  samplingPointId: Int8
-  state: Generated<string>
-  temperatureC: Generated<string>
-  uploadId: Int8 | null
-  version: Generated<number>
+  acceptanceReason: Generated<string>;
+  clientConsent: Generated<string>;
+  clientId: Int8;
+  collectedAt: Timestamp;
+  collectedBy: string;
+  condition: Generated<string>;
+  container: string;
+  createdAt: Generated<Timestamp>;
+  draftId: string | null;
+  filteredInField: Generated<boolean>;
+  id: Generated<Int8>;
+  kind: string;
+  number: string;
+  ph: Generated<string>;
+  preservation: string;
+  purpose: string;
+  qualified: Generated<boolean>;
+  receivedAt: Timestamp | null;
+  receivedBy: Int8 | null;
+  remarks: Generated<string>;
+  samplingPointId: Int8;
+  state: Generated<string>;
+  temperatureC: Generated<string>;
+  uploadId: Int8 | null;
+  version: Generated<number>;
 }
 
 export interface SamplingPoints {
-  active: Generated<boolean>
-  clientId: Int8
-  code: string
-  id: Generated<Int8>
-  kind: string
-  name: string
-  version: Generated<number>
+  active: Generated<boolean>;
+  clientId: Int8;
+  code: string;
+  id: Generated<Int8>;
+  kind: string;
+  name: string;
+  version: Generated<number>;
 }
 
 export interface Sessions {
-  expire: Timestamp
-  sess: Json
-  sid: string
+  expire: Timestamp;
+  sess: Json;
+  sid: string;
 }
 
 export interface Signatures {
-  at: Generated<Timestamp>
-  content: Json
-  contentSha256: string
-  id: Generated<Int8>
-  meaning: string
-  printedName: string
-  role: string
-  thing: string
-  thingId: Int8
-  userId: Int8
+  at: Generated<Timestamp>;
+  content: Json;
+  contentSha256: string;
+  id: Generated<Int8>;
+  meaning: string;
+  printedName: string;
+  role: string;
+  thing: string;
+  thingId: Int8;
+  userId: Int8;
 }
 
 export interface SignInAttempts {
-  accountHash: string
-  address: string
-  at: Generated<Timestamp>
-  id: Generated<Int8>
-  succeeded: boolean
+  accountHash: string;
+  address: string;
+  at: Generated<Timestamp>;
+  id: Generated<Int8>;
+  succeeded: boolean;
 }
 
 export interface Uploads {
-  aboutId: Int8 | null
-  appliedAt: Timestamp | null
-  bytes: Buffer
-  fileName: string
-  id: Generated<Int8>
-  kind: string
-  preview: Json
-  sha256: string
-  uploadedAt: Generated<Timestamp>
-  uploadedBy: Int8
+  aboutId: Int8 | null;
+  appliedAt: Timestamp | null;
+  bytes: Buffer;
+  fileName: string;
+  id: Generated<Int8>;
+  kind: string;
+  preview: Json;
+  sha256: string;
+  uploadedAt: Generated<Timestamp>;
+  uploadedBy: Int8;
 }
 
 export interface Users {
-  clientId: Int8 | null
-  createdAt: Generated<Timestamp>
-  email: string
-  id: Generated<Int8>
-  lastSignedInAt: Timestamp | null
-  name: string
-  passwordHash: string | null
-  role: string
-  status: Generated<string>
-  version: Generated<number>
+  clientId: Int8 | null;
+  createdAt: Generated<Timestamp>;
+  email: string;
+  id: Generated<Int8>;
+  lastSignedInAt: Timestamp | null;
+  name: string;
+  passwordHash: string | null;
+  role: string;
+  status: Generated<string>;
+  version: Generated<number>;
 }
 
 export interface UserTokens {
-  createdAt: Generated<Timestamp>
-  expiresAt: Timestamp
-  id: Generated<Int8>
-  kind: string
-  tokenHash: string
-  usedAt: Timestamp | null
-  userId: Int8
+  createdAt: Generated<Timestamp>;
+  expiresAt: Timestamp;
+  id: Generated<Int8>;
+  kind: string;
+  tokenHash: string;
+  usedAt: Timestamp | null;
+  userId: Int8;
 }
 
 export interface ValidationRuns {
-  at: Generated<Timestamp>
-  byId: Int8
-  cases: number
-  engineVersion: string
-  failed: number
-  id: Generated<Int8>
-  passed: number
-  pdf: Buffer | null
-  report: Json
-  sha256: string
+  at: Generated<Timestamp>;
+  byId: Int8;
+  cases: number;
+  engineVersion: string;
+  failed: number;
+  id: Generated<Int8>;
+  passed: number;
+  pdf: Buffer | null;
+  report: Json;
+  sha256: string;
 }
 
 export interface DB {
-  alerts: Alerts
-  authorisations: Authorisations
-  batches: Batches
-  batchLots: BatchLots
-  batchWatchers: BatchWatchers
-  calibrationLots: CalibrationLots
-  calibrationReadings: CalibrationReadings
-  calibrations: Calibrations
-  calibrationStandards: CalibrationStandards
-  certificateDocuments: CertificateDocuments
-  certificateOpenings: CertificateOpenings
-  certificateResults: CertificateResults
-  certificates: Certificates
-  clients: Clients
-  clocks: Clocks
-  contacts: Contacts
-  determinations: Determinations
-  findingActions: FindingActions
-  history: History
-  historySeals: HistorySeals
-  instrumentChecks: InstrumentChecks
-  instruments: Instruments
-  laboratory: Laboratory
-  limits: Limits
-  mailMessages: MailMessages
-  materialLots: MaterialLots
-  methods: Methods
-  positionReadings: PositionReadings
-  positions: Positions
-  programmes: Programmes
-  results: Results
-  samples: Samples
-  samplingPoints: SamplingPoints
-  sessions: Sessions
-  signatures: Signatures
-  signInAttempts: SignInAttempts
-  uploads: Uploads
-  users: Users
-  userTokens: UserTokens
-  validationRuns: ValidationRuns
+  alerts: Alerts;
+  authorisations: Authorisations;
+  batches: Batches;
+  batchLots: BatchLots;
+  batchWatchers: BatchWatchers;
+  calibrationLots: CalibrationLots;
+  calibrationReadings: CalibrationReadings;
+  calibrations: Calibrations;
+  calibrationStandards: CalibrationStandards;
+  certificateDocuments: CertificateDocuments;
+  certificateOpenings: CertificateOpenings;
+  certificateResults: CertificateResults;
+  certificates: Certificates;
+  clients: Clients;
+  clocks: Clocks;
+  contacts: Contacts;
+  determinations: Determinations;
+  findingActions: FindingActions;
+  history: History;
+  historySeals: HistorySeals;
+  instrumentChecks: InstrumentChecks;
+  instruments: Instruments;
+  laboratory: Laboratory;
+  limits: Limits;
+  mailMessages: MailMessages;
+  materialLots: MaterialLots;
+  methods: Methods;
+  positionReadings: PositionReadings;
+  positions: Positions;
+  programmes: Programmes;
+  results: Results;
+  samples: Samples;
+  samplingPoints: SamplingPoints;
+  sessions: Sessions;
+  signatures: Signatures;
+  signInAttempts: SignInAttempts;
+  uploads: Uploads;
+  users: Users;
+  userTokens: UserTokens;
+  validationRuns: ValidationRuns;
 }

@@ -12,6 +12,7 @@ export class LoggingModule {
         LoggerModule.forRootAsync({
           inject: [Settings],
           useFactory: (settings: Settings) => ({
+            forRoutes: ['{*path}'],
             pinoHttp: {
               level: settings.logLevel,
               redact: ['password', 'passphrase', 'token', '*.password', '*.passphrase', '*.token'],
