@@ -1,0 +1,1 @@
+export { CertificatesModule } from './certificates.module.js'
