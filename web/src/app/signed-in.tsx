@@ -1,8 +1,9 @@
 import { useQuery, useQueryClient } from '@tanstack/react-query'
 import type { SessionView } from '@weirlight/shared/contracts'
 import { PERMISSIONS, can, type Action } from '@weirlight/shared/permissions'
-import { lazy, Suspense, useEffect, useRef, useSyncExternalStore } from 'react'
+import { Suspense, useEffect, useRef, useSyncExternalStore } from 'react'
 import { Navigate, Outlet, useLocation, useMatches } from 'react-router-dom'
+import { SignInDialog } from '../features/session'
 import { asProblem } from '../lib/problem-error'
 import { isSignInNeeded, subscribeToSignInNeed, waitForSignIn } from '../lib/re-sign-in'
 import { SessionContext, sessionQuery } from '../lib/session'
@@ -10,10 +11,6 @@ import { paths } from '../lib/paths'
 import { Failed, Forbidden, SkeletonPage } from '../ui/page-states'
 import { BenchLayout } from './layouts/bench-layout'
 import { ClientLayout } from './layouts/client-layout'
-
-const SignInDialog = lazy(async () => ({
-  default: (await import('../features/session/components/sign-in-dialog')).SignInDialog,
-}))
 
 /** Everything behind the door. A session that ends while a page is open is mended over the page, never by leaving it. */
 export function SignedIn() {

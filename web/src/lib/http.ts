@@ -1,5 +1,5 @@
 import axios, { AxiosError, type AxiosResponse } from 'axios'
-import { offlineProblem, parseProblem, ProblemError } from './problem-error'
+import { offlineProblem, parseProblem } from './problem-error'
 import { noteServerTime } from './server-clock'
 
 /** The one HTTP client. Every changing request carries `x-weirlight`, which no other site can send for a person. */
@@ -46,7 +46,7 @@ http.interceptors.response.use(
       throw offlineProblem()
     }
     noteServerTime(error.response.headers['date'])
-    const problem: ProblemError = parseProblem({
+    const problem = parseProblem({
       status: error.response.status,
       body: await readBody(error.response),
     })

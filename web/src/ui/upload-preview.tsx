@@ -139,7 +139,7 @@ export function UploadPreview<P extends Preview>(props: UploadPreviewProps<P>) {
             <button
               type="button"
               className="button main"
-              disabled={isApplying || found.preview.rows.every((row) => row.problems.length > 0)}
+              disabled={isApplying || !canApply(found.preview)}
               onClick={() => void enter()}
             >
               {isApplying
@@ -153,6 +153,11 @@ export function UploadPreview<P extends Preview>(props: UploadPreviewProps<P>) {
       )}
     </div>
   )
+}
+
+/** All or none: a file with a bad row enters nothing. */
+function canApply(preview: Preview): boolean {
+  return preview.rows.length > 0 && preview.rows.every((row) => row.problems.length === 0)
 }
 
 function Found({ preview, fileName, what }: { preview: Preview; fileName: string; what: string }) {

@@ -1,5 +1,5 @@
 import { ROLE_NAMES } from '@weirlight/shared/permissions'
-import { closeSession } from '../../features/session/api/session-api'
+import { closeSession } from '../../features/session'
 import { paths } from '../../lib/paths'
 import { useSession } from '../../lib/session'
 import { usePanel } from './use-panel'

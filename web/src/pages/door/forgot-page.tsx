@@ -1,7 +1,7 @@
 import { forgotPassphrase } from '@weirlight/shared/contracts'
 import { useState, type FormEvent } from 'react'
 import { Link } from 'react-router-dom'
-import { refusalOf, slipsOf, type FieldErrors } from '../../features/session/components/field-errors'
+import { refusalOf, slipsOf, type FieldErrors } from '../../features/session'
 import { call } from '../../lib/call'
 import { paths } from '../../lib/paths'
 import { Door, DoorField, formTexts } from '../../ui/door'

@@ -11,10 +11,10 @@ import {
   TitleComponent,
   TooltipComponent,
 } from 'echarts/components'
-import { init, use } from 'echarts/core'
+import { init, use as register } from 'echarts/core'
 import { SVGRenderer } from 'echarts/renderers'
 
-use([
+register([
   BarChart,
   CustomChart,
   LineChart,

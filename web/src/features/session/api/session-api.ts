@@ -1,10 +1,4 @@
-import {
-  acceptInvitation,
-  getInvitation,
-  signIn,
-  signOut,
-  type SessionView,
-} from '@weirlight/shared/contracts'
+import { getInvitation, signIn, signOut, type SessionView } from '@weirlight/shared/contracts'
 import type { QueryClient } from '@tanstack/react-query'
 import { call } from '../../../lib/call'
 import { queryFor } from '../../../lib/queries'
@@ -26,5 +20,3 @@ export async function closeSession(signInPath: string): Promise<void> {
 }
 
 export const invitationQuery = (token: string) => queryFor(getInvitation, { params: { token } })
-
-export { acceptInvitation }
