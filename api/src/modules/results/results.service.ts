@@ -1,5 +1,11 @@
 import { Injectable } from '@nestjs/common'
-import type { exportResults, listResults, QueryOf, resultTrend } from '@weirlight/shared/contracts'
+import type {
+  exportResults,
+  listResults,
+  portalResults,
+  QueryOf,
+  resultTrend,
+} from '@weirlight/shared/contracts'
 import { determinationName, showUnit, type PositionLimit } from '@weirlight/shared/contracts'
 import { convertUnit } from '@weirlight/shared/assay'
 import {
@@ -40,6 +46,18 @@ export class ResultsService {
     const row = await this.results.find(db, id)
     if (!row) throw notFound('result')
     return row
+  }
+
+  /** Released results of one client; `limit + 1` rows, for a page. */
+  async releasedTo(
+    clientId: string,
+    { after, limit, ...filter }: QueryOf<typeof portalResults>,
+  ): Promise<ResultRecord[]> {
+    return this.results.list(this.db.read, {
+      after,
+      limit,
+      filter: { ...filter, clientId, state: 'released' },
+    })
   }
 
   /** Released results of one sample: what a certificate may say. */

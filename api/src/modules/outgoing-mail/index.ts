@@ -1,0 +1,1 @@
+export { OutgoingMailModule } from './outgoing-mail.module.js'

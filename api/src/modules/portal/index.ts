@@ -1,0 +1,1 @@
+export { PortalModule } from './portal.module.js'
