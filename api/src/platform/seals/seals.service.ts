@@ -43,6 +43,11 @@ export class SealsService {
     }
   }
 
+  /** The newest first, before the seal of a number. */
+  async list(page: { before?: string | undefined; limit: number }): Promise<SealRow[]> {
+    return this.seals.list(this.db.read, page)
+  }
+
   /** Recomputes the latest seals, oldest of them first, from the entries as they are now. */
   async check(limit: number): Promise<SealCheck> {
     const rows = (await this.seals.list(this.db.read, { limit: limit + 1 })).reverse()
