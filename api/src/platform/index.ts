@@ -40,3 +40,4 @@ export { findColumns, plainName, type ColumnProblem, type NamedColumn } from './
 export type { Sheet, SheetRow } from './sheets/sheet.js'
 export { SheetsService } from './sheets/sheets.service.js'
 export { toXlsx, type SheetToWrite } from './sheets/xlsx-writing.js'
+export { openWorkerPool, workerFile } from './worker-pool.js'
