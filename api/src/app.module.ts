@@ -1,5 +1,7 @@
 import { Module, type DynamicModule } from '@nestjs/common'
+import { BatchesModule } from './modules/batches/index.js'
 import { BenchModule } from './modules/bench/index.js'
+import { CalibrationsModule } from './modules/calibrations/index.js'
 import { ClientsModule } from './modules/clients/index.js'
 import { HistoryModule } from './modules/history/index.js'
 import { InstrumentsModule } from './modules/instruments/index.js'
@@ -7,7 +9,18 @@ import { LaboratoryModule } from './modules/laboratory/index.js'
 import { MaterialsModule } from './modules/materials/index.js'
 import { MethodsModule } from './modules/methods/index.js'
 import { ProgrammesModule } from './modules/programmes/index.js'
+import { SamplesModule } from './modules/samples/index.js'
 import { UsersModule } from './modules/users/index.js'
+import { SamplesModule } from './modules/samples/index.js'
+import { CalibrationsModule } from './modules/calibrations/index.js'
+import { BatchesModule } from './modules/batches/index.js'
+import { ResultsModule } from './modules/results/index.js'
+import { AlertsModule } from './modules/alerts/index.js'
+import { CertificatesModule } from './modules/certificates/index.js'
+import { PortalModule } from './modules/portal/index.js'
+import { TodayModule } from './modules/today/index.js'
+import { OutgoingMailModule } from './modules/outgoing-mail/index.js'
+import { QualityModule } from './modules/quality/index.js'
 import { EventsModule } from './platform/events/events.module.js'
 import { PlatformModule, type PlatformOptions } from './platform/platform.module.js'
 
@@ -23,6 +36,16 @@ export const FEATURES: NonNullable<DynamicModule['imports']> = [
   MaterialsModule,
   InstrumentsModule,
   BenchModule,
+  SamplesModule,
+  CalibrationsModule,
+  BatchesModule,
+  ResultsModule,
+  AlertsModule,
+  CertificatesModule,
+  PortalModule,
+  TodayModule,
+  OutgoingMailModule,
+  QualityModule,
 ]
 
 @Module({})

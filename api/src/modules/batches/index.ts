@@ -1,0 +1,7 @@
+export { BatchesModule } from './batches.module.js'
+export { BatchesService } from './batches.service.js'
+export { BatchesRepository } from './batches.repository.js'
+export { OpeningService } from './opening.service.js'
+export { RunningService } from './running.service.js'
+export { assessBatch, type AssessedBatch, type AssessedPosition, type BatchWhole } from './assess-batch.js'
+export { REVIEW_WITHIN_HOURS } from './batch-view.js'
