@@ -1,28 +1,11 @@
 import { forgotPassphrase, getSession, listUsers, signIn, signOut } from '@weirlight/shared/contracts'
 import { describe, expect, it } from 'vitest'
-import { aUser } from '../../testing/people.js'
+import { aPersonWithPassphrase, PASSPHRASE } from '../../testing/accounts.js'
 import { useTestApp, type TestApp } from '../../testing/test-app.js'
 import { Agent } from '../../testing/agent.js'
-import { PassphraseHasher } from './passphrase-hasher.js'
 import { UsersModule } from './users.module.js'
 
 const at = useTestApp({ imports: [UsersModule] })
-const PASSPHRASE = 'seven brown otters on a ferry'
-
-async function aPersonWithPassphrase(app: TestApp, options: Parameters<typeof aUser>[1] = {}) {
-  const actor = await aUser(app.database.db, options)
-  const passwordHash = await app.get(PassphraseHasher).hash(PASSPHRASE)
-  const email = await app.database.db.transaction(actor, 'user.accept-invitation', null, async (trx) => {
-    const { email } = await trx
-      .updateTable('users')
-      .set({ passwordHash })
-      .where('id', '=', actor.userId)
-      .returning('email')
-      .executeTakeFirstOrThrow()
-    return email
-  })
-  return { ...actor, email }
-}
 
 async function post(app: TestApp, body: unknown, cookie?: string) {
   const sent = await new Agent(app.app, cookie).send(signIn, { body })
