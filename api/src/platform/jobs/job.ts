@@ -12,6 +12,8 @@ export interface Job<D = unknown> {
   readonly concurrency: number
   /** five-field cron in UTC, for what happens by itself; such a job takes no data */
   readonly schedule: string | undefined
+  /** also whenever a worker starts: for sweeps, which look for what an earlier process left undone */
+  readonly runsAtStart: boolean
 }
 
 const declared = new Map<string, Job>()
@@ -28,6 +30,7 @@ export function defineJob<D>(job: {
   expireSeconds?: number
   concurrency?: number
   schedule?: string
+  runsAtStart?: boolean
 }): Job<D> {
   if (!/^[a-z][a-z-]*(\.[a-z][a-z-]*)+$/.test(job.name))
     throw new Error(`“${job.name}” is no name for a job.`)
@@ -38,6 +41,7 @@ export function defineJob<D>(job: {
     expireSeconds: 60,
     concurrency: 1,
     schedule: undefined,
+    runsAtStart: false,
     ...job,
   }
   declared.set(job.name, whole as Job)

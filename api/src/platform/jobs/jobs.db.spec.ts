@@ -6,11 +6,14 @@ import { SYSTEM } from '../database/acting.js'
 import { currentRequestId } from '../http/request-context.js'
 import { JobHandlers } from './handlers.js'
 import { JobHandler, type JobRun } from './job-handler.decorator.js'
-import { defineJob } from './job.js'
+import { defineJob, noData } from './job.js'
 import { JobsService } from './jobs.service.js'
 
 const echo = defineJob({ name: 'test.echo', data: z.object({ word: z.string() }), retryDelaySeconds: 1 })
 const orphan = defineJob({ name: 'test.orphan', data: z.object({}) })
+
+const sweep = defineJob({ name: 'test.sweep', data: noData, schedule: '0 3 1 1 *', runsAtStart: true })
+let sweeps = 0
 
 const seen: { word: string; attempt: number; requestId: string | undefined }[] = []
 let failures = 0
@@ -24,6 +27,12 @@ class Echo {
       failures -= 1
       throw new Error('not this time')
     }
+    return Promise.resolve()
+  }
+
+  @JobHandler(sweep)
+  async sweep(): Promise<void> {
+    sweeps += 1
     return Promise.resolve()
   }
 }
@@ -45,6 +54,14 @@ async function enqueue(word: string): Promise<void> {
 const heard = (word: string) => seen.filter((one) => one.word === word)
 
 describe('jobs', () => {
+  it('that sweep run when a worker starts, and by the clock', async () => {
+    await expect.poll(() => sweeps, { timeout: 8_000, interval: 20 }).toBe(1)
+    const { rows } = await at.database.owner.pool.query(
+      `select cron from pgboss.schedule where name = 'test.sweep'`,
+    )
+    expect(rows).toEqual([{ cron: '0 3 1 1 *' }])
+  })
+
   it('run soon after the change that adds them is committed', async () => {
     const started = Date.now()
     await enqueue('soon')

@@ -86,10 +86,7 @@ export class JobsService implements OnApplicationBootstrap, BeforeApplicationShu
     if (!this.options.isWorker) return
     for (const handler of found) await this.work(handler)
     await this.bell.start()
-    for (const { job } of found) {
-      if (job.schedule !== undefined)
-        await this.boss.schedule(job.name, job.schedule, { job: job.name, input: {} })
-    }
+    for (const { job } of found) await this.arrange(job)
   }
 
   async beforeApplicationShutdown(): Promise<void> {
@@ -121,6 +118,14 @@ export class JobsService implements OnApplicationBootstrap, BeforeApplicationShu
     }
     await this.boss.createQueue(job.name, options)
     await this.boss.updateQueue(job.name, options)
+  }
+
+  /** What happens by itself. Processes that start together share one run at the start. */
+  private async arrange(job: Job): Promise<void> {
+    const envelope: Envelope = { job: job.name, input: {} }
+    if (job.schedule !== undefined) await this.boss.schedule(job.name, job.schedule, envelope)
+    if (!job.runsAtStart) return
+    await this.boss.send(job.name, envelope, { singletonKey: 'start', singletonSeconds: 5 })
   }
 
   private async work({ job, run }: FoundHandler): Promise<void> {

@@ -28,13 +28,18 @@ export class LoggingModule {
                 if (error || response.statusCode >= 500) return 'error'
                 return response.statusCode >= 400 ? 'warn' : 'info'
               },
-              autoLogging: { ignore: (request) => request.url?.startsWith('/api') !== true },
+              autoLogging: { ignore: (request) => !addressOf(request).startsWith('/api') },
             },
           }),
         }),
       ],
     }
   }
+}
+
+/** as it was asked for, whatever part of it a router has taken off */
+function addressOf(request: { url?: string | undefined; originalUrl?: string }): string {
+  return request.originalUrl ?? request.url ?? ''
 }
 
 /** the address without its query and without the secret of a link */

@@ -1,4 +1,4 @@
-import { Injectable, Logger, type OnApplicationBootstrap } from '@nestjs/common'
+import { Injectable, Logger } from '@nestjs/common'
 import { z } from 'zod'
 import { Database } from '../database/database.js'
 import { JobHandler } from '../jobs/job-handler.decorator.js'
@@ -80,14 +80,4 @@ export class MailSender {
 function isRefused(error: unknown): boolean {
   if (typeof error !== 'object' || error === null || !('responseCode' in error)) return false
   return typeof error.responseCode === 'number' && error.responseCode >= 500
-}
-
-/** A worker that starts looks for what an earlier one left. */
-@Injectable()
-export class MailSweepAtStart implements OnApplicationBootstrap {
-  constructor(private readonly sender: MailSender) {}
-
-  async onApplicationBootstrap(): Promise<void> {
-    await this.sender.sweep().catch(() => undefined)
-  }
 }

@@ -7,5 +7,11 @@ export const sendMail = defineJob({
   concurrency: 3,
 })
 
-/** every minute: whatever should have left and has no job any more */
-export const sweepMail = defineJob({ name: 'mail.sweep', data: noData, retryLimit: 0, schedule: '* * * * *' })
+/** every minute, and when a worker starts: whatever should have left and has no job any more */
+export const sweepMail = defineJob({
+  name: 'mail.sweep',
+  data: noData,
+  retryLimit: 0,
+  schedule: '* * * * *',
+  runsAtStart: true,
+})

@@ -33,7 +33,8 @@ export async function registerSessions(
       maxAge: IDLE_MINUTES * 60_000,
     },
   })
-  fastify.addHook('onClose', async () => {
-    await store.close()
+  fastify.addHook('onClose', (_, done) => {
+    store.close()
+    done()
   })
 }
