@@ -54,7 +54,7 @@ export class ReviewService {
         methodId: batch.methodId,
         activity: 'read',
       })
-      await this.calibrations.getInForce(trx, batch.calibrationId)
+      await this.calibrations.requireUsable(trx, batch.calibrationId)
       const view = await this.batches.view(trx, id, actor)
       requireComplete(view)
       const samples = view.rows.filter((row) => row.kind === 'sample')
