@@ -3,13 +3,13 @@
 export const house = {
   /** Features from low to high. A feature imports the face (index.ts) of a lower level: never sideways or up. */
   levels: [
-    ['history', 'laboratory', 'mail', 'health'],
+    ['history', 'laboratory', 'mail', 'outgoing-mail', 'health', 'validation'],
     ['users', 'session'],
     ['clients', 'programmes', 'methods', 'materials', 'instruments'],
     ['samples', 'calibrations', 'bench'],
     ['batches'],
     ['results', 'review'],
-    ['alerts', 'certificates', 'charts', 'studies', 'actions'],
+    ['alerts', 'certificates', 'charts', 'studies', 'actions', 'quality'],
     ['today', 'portal'],
   ],
   /** Where the features live. */

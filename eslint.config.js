@@ -8,14 +8,8 @@ import tseslint from 'typescript-eslint'
 import { house } from './.dependency-cruiser.mjs'
 
 const typescript = ['**/*.ts', '**/*.tsx']
-const tests = [
-  '**/*.spec.ts',
-  '**/*.spec.tsx',
-  '**/*.test-support.ts',
-  '**/testing/**',
-  '**/bench/**',
-  'e2e/**',
-]
+const benches = ['shared/bench/**', 'api/src/bench/**']
+const tests = ['**/*.spec.ts', '**/*.spec.tsx', '**/*.test-support.ts', '**/testing/**', ...benches, 'e2e/**']
 const configurations = ['**/*.config.ts', '*.config.js', '.dependency-cruiser.mjs']
 
 const noDefaultExport = {
@@ -124,7 +118,7 @@ export default tseslint.config(
     files: [
       'sql/cluster/**',
       'e2e/**',
-      '**/bench/**',
+      ...benches,
       '**/testing/**',
       'api/src/*.ts',
       'api/src/platform/database/*.ts',
