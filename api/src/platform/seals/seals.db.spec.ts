@@ -95,6 +95,8 @@ describe('seals', () => {
       await held
     })
     await written
+    // somebody else commits a later entry while the earlier one is still open
+    await aClient(db)
     const sealing = service().seal()
     await new Promise((resolve) => setTimeout(resolve, 300))
     release()
