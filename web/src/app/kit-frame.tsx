@@ -1,6 +1,8 @@
 import { ConfigProvider, theme } from 'antd'
-import { useMemo } from 'react'
+import { can } from '@weirlight/shared/permissions'
+import { useContext, useMemo } from 'react'
 import { Outlet } from 'react-router-dom'
+import { SessionContext } from '../lib/session'
 import { StoryProvider } from '../ui/story'
 import { storySlot } from './story-slot'
 import { antdTheme, DARK } from './theme'
@@ -12,6 +14,9 @@ const nonce = document.querySelector('meta[name="csp-nonce"]')?.getAttribute('co
 /** antd in the bench theme, and the drawer that any number opens. */
 export function KitFrame() {
   const tokens = useBenchTheme()
+  // null on the pages without a session
+  const session = useContext(SessionContext)
+  const mayReadStories = session !== null && can(session, 'story.read')
   const config = useMemo(
     () => ({
       ...antdTheme(tokens),
@@ -26,7 +31,7 @@ export function KitFrame() {
       button={{ autoInsertSpace: false }}
       {...(nonce ? { csp: { nonce } } : {})}
     >
-      <StoryProvider slot={storySlot}>
+      <StoryProvider slot={mayReadStories ? storySlot : null}>
         <Outlet />
       </StoryProvider>
     </ConfigProvider>

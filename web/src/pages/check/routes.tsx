@@ -1,3 +1,8 @@
 import type { RouteObject } from 'react-router-dom'
 
-export const checkRoutes: RouteObject[] = []
+const page = async () => ({ Component: (await import('./check-page')).CheckPage })
+
+export const checkRoutes: RouteObject[] = [
+  { path: 'check', lazy: page },
+  { path: 'check/:code', lazy: page },
+]

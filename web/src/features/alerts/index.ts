@@ -1,0 +1,8 @@
+export { AlertById, Agency } from './components/alert-page'
+export { AlertsList } from './components/alerts-list'
+export { DeliveriesTable } from './components/deliveries-table'
+export { EarlierResults } from './components/earlier-results'
+export { LawClocks } from './components/law-clocks'
+export { SeenDialog } from './components/seen-dialog'
+export { earlierWords, isAnswered, limitKindWords, overWhat, ruleWords, whatWasFound } from './alert-words'
+export { alertPages, alertQuery, type AlertRow, type AlertView, type Delivery } from './api/alert-queries'

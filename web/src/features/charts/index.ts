@@ -1,0 +1,1 @@
+export { ControlCharts } from './components/control-charts'

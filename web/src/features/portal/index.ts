@@ -1,0 +1,7 @@
+export { OurAlert } from './components/our-alert'
+export { OurAlerts } from './components/our-alerts'
+export { OurCertificate, OurCertificates } from './components/our-certificates'
+export { OurPoint } from './components/our-point'
+export { OurPoints } from './components/our-points'
+export { OwnNow } from './components/now'
+export { ResultsOfOurs } from './components/results-of-ours'
