@@ -1,5 +1,6 @@
 import react from '@vitejs/plugin-react'
 import { defineConfig } from 'vitest/config'
+import packageJson from './package.json' with { type: 'json' }
 import { precompress } from './build/precompress.ts'
 
 const conditions = ['source', 'module', 'browser', 'development|production']
@@ -7,6 +8,8 @@ const conditions = ['source', 'module', 'browser', 'development|production']
 export default defineConfig({
   plugins: [react(), precompress()],
   resolve: { conditions },
+  // shown on the page that says how the installation stands
+  define: { 'import.meta.env.VITE_VERSION': JSON.stringify(packageJson.version) },
   server: {
     // the API's address while developing; set by `npm run dev`
     proxy: {
@@ -45,6 +48,8 @@ export default defineConfig({
           include: ['src/**/*.spec.tsx'],
           environment: 'jsdom',
           setupFiles: ['src/testing/set-up.ts'],
+          // antd's styles make the drawn tests slow on a machine that does much else
+          testTimeout: 30_000,
         },
       },
     ],

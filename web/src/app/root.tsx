@@ -14,3 +14,8 @@ export function Root() {
     </>
   )
 }
+
+/** Before the first page is there: the ground of the theme and a line that moves. */
+export function Opening() {
+  return <div className="moving" role="status" aria-label="Weirlight is being opened" />
+}

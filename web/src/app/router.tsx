@@ -4,7 +4,7 @@ import { portalRoutes } from '../pages/portal/routes'
 import { todayRoutes } from '../pages/today/routes'
 import { AREAS } from './areas'
 import { PageFault } from './page-fault'
-import { Root } from './root'
+import { Opening, Root } from './root'
 import { HomePage, NotFoundPage } from './small-pages'
 import { SignedIn } from './signed-in'
 
@@ -38,8 +38,7 @@ export function makeRouter() {
     {
       Component: Root,
       ErrorBoundary: PageFault,
-      // nothing is drawn before the first page is there: the ground is the theme's already
-      HydrateFallback: () => null,
+      HydrateFallback: Opening,
       children: [
         { ErrorBoundary: PageFault, children: door },
         { handle: { isPublic: true }, ...withKit(checkRoutes) },

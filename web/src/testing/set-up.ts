@@ -27,3 +27,7 @@ if (!('ResizeObserver' in window)) {
   }
   Object.defineProperty(window, 'ResizeObserver', { value: QuietResizeObserver })
 }
+
+// jsdom computes no style of a pseudo element, and says so at length
+const { getComputedStyle } = window
+window.getComputedStyle = (element) => getComputedStyle(element)

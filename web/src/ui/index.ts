@@ -16,6 +16,9 @@ export {
   SkeletonLines,
   SkeletonPage,
 } from './page-states'
+export { factMark, Provenance } from './provenance'
+export { SectionNav, type Section } from './section-nav'
+export { SelectInput, type SelectOption } from './select-input'
 export { Bar, Box, Columns, Criteria, Kbd, KeyHints, KeyValues, Strip, type MaybeFact } from './sheet'
 export { Signatures } from './signatures'
 export { MarkShape, StatusTag, type Mark } from './status-tag'

@@ -65,7 +65,7 @@ export interface Fact {
   term: string
   detail: ReactNode
 }
-export type MaybeFact = Fact | false | null | undefined
+export type MaybeFact = Fact | false | '' | null | undefined
 
 export const present = (facts: readonly MaybeFact[]): Fact[] => facts.filter((fact) => !!fact)
 

@@ -6,7 +6,10 @@ export interface LineClock {
   prefix: string
 }
 
-/** `review due in 2 h 10 min`, `review late by 3 h`, `unanswered for 3 h`, or the prefix alone. */
+/** What is said of a clock that has run out, where “late by” would not. */
+const PAST: Record<string, string> = { ends: 'ended', expires: 'expired' }
+
+/** `review due in 2 h 10 min`, `review late by 3 h`, `holding time: 9 h 20 min left`, `unanswered for 3 h`. */
 export function lineClockWords(clock: LineClock, now: number): string {
   const { at, sense, prefix } = clock
   if (at === null || sense === 'none') return prefix
@@ -14,5 +17,9 @@ export function lineClockWords(clock: LineClock, now: number): string {
   // a duration is not broken across lines
   const words = durationWords(left).replaceAll(' ', '\u00a0')
   if (sense === 'since') return `${prefix} for ${words}`.trim()
-  return (left >= 0 ? `${prefix} in ${words}` : `${prefix} late by ${words}`).trim()
+  const past = PAST[prefix]
+  const isDue = prefix.endsWith(' due')
+  if (left >= 0) return past || isDue ? `${prefix} in ${words}` : `${prefix}: ${words} left`
+  if (past) return `${past} ${words} ago`
+  return isDue ? `${prefix.slice(0, -' due'.length)} late by ${words}` : `${prefix}: late by ${words}`
 }
