@@ -1,0 +1,1 @@
+export { Readiness, readinessQuery } from './components/readiness'

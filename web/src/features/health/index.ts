@@ -1,0 +1,1 @@
+export { HealthBox } from './components/health-box'

@@ -1,0 +1,2 @@
+export { HistoryList } from './components/history-list'
+export { Seals } from './components/seals'

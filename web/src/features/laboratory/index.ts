@@ -1,0 +1,1 @@
+export { LaboratoryParticulars } from './components/laboratory-particulars'

@@ -1,0 +1,1 @@
+export { MailList } from './components/mail-list'

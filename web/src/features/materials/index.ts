@@ -1,0 +1,3 @@
+export { AddMaterial } from './components/add-material'
+export { MaterialById } from './components/material-page'
+export { MaterialsList } from './components/materials-list'

@@ -1,0 +1,3 @@
+export { ProgrammesList } from './components/programmes-list'
+export { programmesQuery, type Programme } from './api/programme-queries'
+export { useProgrammeNames } from './hooks/use-programme-names'

@@ -1,0 +1,6 @@
+export { ReceiveManifest } from './components/receive-manifest'
+export { ReceiveSample } from './components/receive-sample'
+export { SampleById } from './components/sample-page'
+export { SampleLabels } from './components/sample-labels'
+export { SampleRegister } from './components/sample-register'
+export { WaitingList } from './components/waiting-list'

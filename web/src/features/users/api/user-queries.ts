@@ -1,0 +1,13 @@
+import { listClients, listMethods, listUsers, type UserView } from '@weirlight/shared/contracts'
+import { queryFor } from '../../../lib'
+
+export type { UserView }
+export type Authorisation = UserView['authorisations'][number]
+
+export const usersQuery = queryFor(listUsers)
+/** to choose from: the utility a client account belongs to, the method of an authorisation */
+export const utilitiesQuery = queryFor(listClients)
+export const methodChoicesQuery = queryFor(listMethods)
+
+/** what a changed account makes old */
+export const TOUCHES = [listUsers]

@@ -1,0 +1,83 @@
+import { useQuery } from '@tanstack/react-query'
+import { ROLE_NAMES } from '@weirlight/shared/permissions'
+import { STATE_MARKS } from '@weirlight/shared/states'
+import { Link } from 'react-router-dom'
+import { paths, useCan, useLaboratoryTime } from '../../../lib'
+import { Bar, Box, Loaded, MarginPage, NotFound, StatusTag, Strip } from '../../../ui'
+import { usersQuery, type UserView } from '../api/user-queries'
+import { AuthorisationsOf } from './authorisations'
+import { PersonActions } from './person-actions'
+
+export function PersonById({ id }: { id: string }) {
+  return (
+    <Loaded query={useQuery(usersQuery)} skeleton="page">
+      {({ items }) => {
+        const person = items.find((each) => each.id === id)
+        return person ? (
+          <PersonPage person={person} />
+        ) : (
+          <div className="page-sheet">
+            <NotFound what="person" />
+          </div>
+        )
+      }}
+    </Loaded>
+  )
+}
+
+function PersonPage({ person }: { person: UserView }) {
+  const may = useCan()
+  const { at } = useLaboratoryTime()
+  const isAtTheBench = person.role !== 'client'
+  return (
+    <MarginPage
+      title={person.name}
+      subtitle={person.email}
+      back={{ to: paths.settingsPeople, label: 'People' }}
+      state={<StatusTag mark={STATE_MARKS.user[person.status]} />}
+      foldLabel="The account"
+      facts={[
+        { term: 'Role', detail: ROLE_NAMES[person.role] },
+        person.clientName && { term: 'Utility', detail: person.clientName },
+        { term: 'Account since', detail: at(person.createdAt) },
+        {
+          term: 'Last signed in',
+          detail: person.lastSignedInAt ? at(person.lastSignedInAt) : 'never',
+        },
+        may('history.read') && {
+          term: 'History',
+          detail: (
+            <>
+              <Link to={`${paths.history}?actorId=${person.id}`}>What this person did</Link>
+              <br />
+              <Link to={`${paths.history}?thing=users&thingId=${person.id}`}>Changes to the account</Link>
+            </>
+          ),
+        },
+      ]}
+      notes={['Passphrases are known to their owners alone. An account is never deleted: what it did stays.']}
+      bar={
+        <Bar
+          lead={isAtTheBench ? <h2>Authorisations</h2> : <h2>A client’s account</h2>}
+          actions={<PersonActions person={person} />}
+        />
+      }
+    >
+      {person.status === 'disabled' && (
+        <Strip tone="quiet" title="Disabled">
+          This account can do nothing. What it did stays in the record under its name.
+        </Strip>
+      )}
+      {isAtTheBench ? (
+        <AuthorisationsOf person={person} />
+      ) : (
+        <Box>
+          <p>
+            This person sees the results, certificates and alerts of {person.clientName ?? 'one utility'}, and
+            nothing of others.
+          </p>
+        </Box>
+      )}
+    </MarginPage>
+  )
+}

@@ -1,0 +1,5 @@
+export { AllAuthorisations, AuthorisationsByMethod } from './components/authorisations'
+export { InvitePerson } from './components/invite-person'
+export { PeopleList } from './components/people-list'
+export { PersonById } from './components/person-page'
+export { usersQuery } from './api/user-queries'

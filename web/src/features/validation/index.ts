@@ -1,0 +1,1 @@
+export { ValidationRuns } from './components/validation-runs'

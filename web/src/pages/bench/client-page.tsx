@@ -1,0 +1,7 @@
+import { useParams } from 'react-router-dom'
+import { ClientById } from '../../features/clients'
+
+export function ClientPage() {
+  const { id = '' } = useParams()
+  return <ClientById key={id} id={id} />
+}
