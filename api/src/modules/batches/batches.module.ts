@@ -13,6 +13,7 @@ import { OpeningService } from './opening.service.js'
 import { PositionsRepository } from './positions.repository.js'
 import { ReadingFilesService } from './reading-files.service.js'
 import { RunningService } from './running.service.js'
+import { SignedResultsRepository } from './signed-results.repository.js'
 
 @Module({
   imports: [
@@ -32,6 +33,7 @@ import { RunningService } from './running.service.js'
     BatchesRepository,
     OpeningRepository,
     PositionsRepository,
+    SignedResultsRepository,
   ],
   exports: [BatchesService, OpeningService, RunningService, BatchesRepository],
 })

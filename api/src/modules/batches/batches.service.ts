@@ -17,6 +17,7 @@ import type { BatchStateName } from './batch-rows.js'
 import { toRow, toView } from './batch-view.js'
 import { BatchesRepository } from './batches.repository.js'
 import { PositionsRepository } from './positions.repository.js'
+import { SignedResultsRepository, type SignedResult } from './signed-results.repository.js'
 
 /** Batches as they are read: lists, and one whole with every position judged by the engine. */
 @Injectable()
@@ -27,6 +28,7 @@ export class BatchesService {
     private readonly batches: BatchesRepository,
     private readonly positions: PositionsRepository,
     private readonly signing: SigningService,
+    private readonly signed: SignedResultsRepository,
   ) {}
 
   async list(query: QueryOf<typeof listBatches>): Promise<AnswerOf<typeof listBatches>> {
@@ -73,6 +75,19 @@ export class BatchesService {
     })
   }
 
+  /** What a release signs: every number of the batch as it stands now. */
+  async signedContent(db: Executor, id: string): Promise<SignedResult[]> {
+    return this.signed.list(db, id)
+  }
+
+  private async signatures(
+    db: Executor,
+    { id, state }: { id: string; state: BatchStateName },
+  ): Promise<BatchView['signatures']> {
+    const content = state === 'released' ? await this.signedContent(db, id) : undefined
+    return this.signing.list(db, 'batches', id, content)
+  }
+
   private async compose(
     db: Executor,
     { whole, assessed, actor }: { whole: BatchWhole; assessed: AssessedBatch; actor: Actor },
@@ -85,7 +100,7 @@ export class BatchesService {
         positionIds: whole.positions.map((position) => position.id),
         since: openedAt,
       }),
-      signatures: await this.signing.list(db, 'batches', id),
+      signatures: await this.signatures(db, whole.batch),
       alsoHere: await this.batches.listWatchers(db, id, actor.userId),
       at: this.clock.now(),
     })
