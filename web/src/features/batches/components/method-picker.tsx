@@ -8,8 +8,7 @@ interface MethodPickerProps {
 export function MethodPicker({ counts, value, onChange }: MethodPickerProps) {
   if (counts.length === 0) return <p className="quiet">Nothing waits for any method.</p>
   return (
-    <fieldset className="bare-set choice-list">
-      <legend className="visually-hidden">Method</legend>
+    <div className="choice-list" role="radiogroup" aria-label="Method">
       {counts.map((each) => (
         <label key={each.methodId}>
           <input
@@ -23,6 +22,6 @@ export function MethodPicker({ counts, value, onChange }: MethodPickerProps) {
           </span>
         </label>
       ))}
-    </fieldset>
+    </div>
   )
 }

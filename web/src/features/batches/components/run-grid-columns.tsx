@@ -1,9 +1,11 @@
 import type { Assessment } from '@weirlight/shared/contracts'
 import { durationWords, useLaboratoryTime, useNow, windowWords } from '../../../lib'
+import { useIsNarrow } from '../../../lib/use-is-narrow'
 import { Clock, NumberWithStory, StatusTag } from '../../../ui'
 import type { RunGridColumn } from '../../../ui/run-grid'
 import { Tint } from '../../../ui/tint'
 import type { BatchView, PositionView } from '../api/batch-queries'
+import { useIsPhone } from '../hooks/use-is-phone'
 import { columnTitle, replicateColumns } from '../run-sheet/cells'
 import {
   commonUnit,
@@ -31,18 +33,25 @@ interface ColumnsInput {
 /** The columns of a run sheet, in the order the eye goes: which tube, its colour, its readings, what they come to. */
 export function useRunColumns({ batch, rows, edit }: ColumnsInput): RunGridColumn<SheetRow>[] {
   const unit = commonUnit(rows)
+  const isNarrow = useIsNarrow()
+  const isPhone = useIsPhone()
   const inCell = (row: SheetRow) =>
     unit === null ? ` ${UNIT_WORDS[row.live.unit ?? row.reporting.displayUnit]}` : ''
   return [
     { kind: 'show', key: 'position', title: '#', isNarrow: true, cell: (row) => row.position },
-    {
-      kind: 'show',
-      key: 'kind',
-      title: 'Kind',
-      cell: (row) => <span className="quiet">{KIND_WORDS[row.kind]}</span>,
-    },
+    // the label of a control says its kind again: on a tablet the room goes to the readings
+    ...(isNarrow
+      ? []
+      : [
+          {
+            kind: 'show' as const,
+            key: 'kind',
+            title: 'Kind',
+            cell: (row: SheetRow) => <span className="quiet">{KIND_WORDS[row.kind]}</span>,
+          },
+        ]),
     { kind: 'show', key: 'label', title: 'Sample and point', cell: (row) => <Label row={row} /> },
-    ...(batch.colourWindow
+    ...(batch.colourWindow && !isPhone
       ? [
           {
             kind: 'show' as const,

@@ -11,12 +11,13 @@ import { Button } from 'antd'
 import { useRef, useState, type KeyboardEvent } from 'react'
 import { Link } from 'react-router-dom'
 import { hrefFor, paths, ProblemError, useCall, useNotice } from '../../../lib'
-import { Bar, KeyHints, MarginPage, StatusTag, Strip } from '../../../ui'
+import { useIsNarrow } from '../../../lib/use-is-narrow'
+import { Bar, KeyHints, MarginPage, ReadingWindow, StatusTag, Strip } from '../../../ui'
 import { ConfirmDialog } from '../../../ui/dialogs'
 import { RunGrid } from '../../../ui/run-grid'
 import { ChangeReason, CorrectionsBox } from '../../calibrations'
 import { useRunSheet } from '../hooks/use-run-sheet'
-import { columnTitle, positionName, readingProblem, rowOf } from '../run-sheet/cells'
+import { columnTitle, positionName, positionTitle, readingProblem, rowOf } from '../run-sheet/cells'
 import { isUnanswered } from '../run-sheet/live-batch'
 import { batchNotes, useBatchFacts, whoIsHere } from './batch-margin'
 import { ColourClock } from './colour-clock'
@@ -35,6 +36,7 @@ interface Editing {
 /** The run sheet of an open batch. */
 export function RunSheetPage({ batch }: { batch: BatchView }) {
   const sheet = useRunSheet(batch)
+  const isNarrow = useIsNarrow()
   const notice = useNotice()
   const frame = useRef<HTMLDivElement>(null)
   const [focusedRow, setFocusedRow] = useState<string | null>(null)
@@ -123,13 +125,28 @@ export function RunSheetPage({ batch }: { batch: BatchView }) {
       ]}
       bar={
         <Bar
-          lead={[
-            `${sheet.rows.length} positions`,
-            `${sheet.read} of ${sheet.cells} readings`,
-            next && `next at position ${next.row.position}`,
-          ]
-            .filter(Boolean)
-            .join(' · ')}
+          lead={
+            <>
+              {[
+                `${sheet.rows.length} positions`,
+                `${sheet.read} of ${sheet.cells} readings`,
+                next && `next at position ${next.row.position}`,
+              ]
+                .filter(Boolean)
+                .join(' · ')}
+              {/* the margin that says it is folded away there */}
+              {isNarrow && (
+                <div className="no-print">
+                  {sheet.queue.summary}{' '}
+                  {batch.colourStartedAt && batch.colourWindow && (
+                    <>
+                      Colour: <ReadingWindow startedAt={batch.colourStartedAt} {...batch.colourWindow} />
+                    </>
+                  )}
+                </div>
+              )}
+            </>
+          }
           actions={
             <>
               <Link className="button" to={paths.batchUpload(batch.id)}>
@@ -179,7 +196,7 @@ export function RunSheetPage({ batch }: { batch: BatchView }) {
           <ul>
             {sheet.missing.map(({ row, columns: empty }) => (
               <li key={row.id}>
-                {positionName(row)}: {empty.map(columnTitle).join(', ')}
+                {positionTitle(row)}: {empty.map(columnTitle).join(', ')}
               </li>
             ))}
           </ul>
@@ -244,14 +261,8 @@ export function RunSheetPage({ batch }: { batch: BatchView }) {
           key={sheet.corrections.length}
           anchor={anchor}
           title={correctionTitle(sheet.corrections.length, batch, correction)}
-          onReason={(reason) => {
-            sheet.correct(reason)
-            focusCell(correction.rowKey, correction.columnKey)
-          }}
-          onCancel={() => {
-            sheet.leaveUncorrected()
-            focusCell(correction.rowKey, correction.columnKey)
-          }}
+          onReason={sheet.correct}
+          onCancel={sheet.leaveUncorrected}
         />
       )}
       {editing && (

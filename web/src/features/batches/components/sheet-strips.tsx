@@ -2,7 +2,7 @@ import { useLaboratoryTime } from '../../../lib'
 import { Strip } from '../../../ui'
 import type { BatchView } from '../api/batch-queries'
 import type { RunSheet } from '../hooks/use-run-sheet'
-import { columnTitle, positionName, rowOf } from '../run-sheet/cells'
+import { columnTitle, positionTitle, rowOf } from '../run-sheet/cells'
 
 /** What the sheet must say before the work goes on: two people in one cell, no connection, an emptied reading. */
 export function SheetStrips({ batch, sheet }: { batch: BatchView; sheet: RunSheet }) {
@@ -24,7 +24,7 @@ export function SheetStrips({ batch, sheet }: { batch: BatchView; sheet: RunShee
             key={`${clash.cell.rowKey} ${clash.cell.columnKey}`}
             tone="above"
             isAlert
-            title={`${row ? positionName(row) : 'A position'}, ${columnTitle(clash.cell.columnKey)}`}
+            title={`${row ? positionTitle(row) : 'A position'}, ${columnTitle(clash.cell.columnKey)}`}
             action={
               <span className="row">
                 <button type="button" className="button" onClick={() => sheet.keepTheirs(clash)}>

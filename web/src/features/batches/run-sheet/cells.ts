@@ -39,3 +39,9 @@ export function positionName(
 ): string {
   return `position ${row.position}, ${row.kind === 'sample' ? (row.sampleNumber ?? row.label) : row.label}`
 }
+
+/** the same at the head of a sentence */
+export function positionTitle(row: Parameters<typeof positionName>[0]): string {
+  const name = positionName(row)
+  return name.charAt(0).toUpperCase() + name.slice(1)
+}

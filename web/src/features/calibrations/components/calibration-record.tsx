@@ -37,7 +37,7 @@ export function CalibrationRecord({ view, method }: { view: CalibrationView; met
             reagent lot, service or failed verification, whichever comes first.
           </p>
         ),
-        view.note && <p key="note">{view.note}</p>,
+        view.note !== '' && <p key="note">{view.note}</p>,
         <div key="signed">
           <strong>Signatures</strong>
           <Signatures items={view.signatures} />

@@ -9,6 +9,7 @@ import { STATE_MARKS } from '@weirlight/shared/states'
 import { Button } from 'antd'
 import { useMemo, useState } from 'react'
 import { paths, ProblemError, useCall, useLaboratoryTime, useNotice } from '../../../lib'
+import { useIsNarrow } from '../../../lib/use-is-narrow'
 import { Bar, Columns, MarginPage, StatusTag } from '../../../ui'
 import { ConfirmDialog, ReasonDialog } from '../../../ui/dialogs'
 import { LeaveDialog } from '../../../ui/form-problem'
@@ -35,6 +36,7 @@ import './calibrations.css'
 export function CalibrationWorkbench({ view, method }: { view: CalibrationView; method: Method }) {
   const sheet = useCalibrationDraft(view)
   const { draft, change } = sheet
+  const isNarrow = useIsNarrow()
   const stock = useBenchStock()
   const notice = useNotice()
   const { at } = useLaboratoryTime()
@@ -98,7 +100,12 @@ export function CalibrationWorkbench({ view, method }: { view: CalibrationView; 
       ]}
       bar={
         <Bar
-          lead={`${draft.standards.length} rows · ${read} readings`}
+          lead={
+            <>
+              {draft.standards.length} rows · {read} readings
+              {isNarrow && <SavedLine status={sheet.status} read={read} />}
+            </>
+          }
           actions={
             <Button type="primary" onClick={() => setAsked({ what: 'submit' })}>
               Submit for signature
@@ -108,56 +115,58 @@ export function CalibrationWorkbench({ view, method }: { view: CalibrationView; 
       }
     >
       <SheetTrouble sheet={sheet} homeless={cells.homeless} />
-      <Columns
-        side={
-          <CalibrationFindings
-            stored={live.stored}
-            criteria={live.criteria}
-            diagnosis={live.diagnosis}
-            refusal={live.refusal}
-            definition={method.definition}
-          />
-        }
-      >
-        <SetUpBox
-          draft={draft}
-          change={setPart}
-          instruments={stock.instruments}
-          materials={stock.materials}
-          definition={method.definition}
-          errorOf={cells.fieldError}
-        />
-        <div>
-          <StandardsGrid
-            base={sheet.base}
+      <div className="workbench">
+        <Columns
+          side={
+            <CalibrationFindings
+              stored={live.stored}
+              criteria={live.criteria}
+              diagnosis={live.diagnosis}
+              refusal={live.refusal}
+              definition={method.definition}
+            />
+          }
+        >
+          <SetUpBox
             draft={draft}
-            live={live}
-            typed={typed}
-            setTyped={setTyped}
-            change={change}
-            cellState={cells.stateOf}
-            definition={method.definition}
+            change={setPart}
+            instruments={stock.instruments}
             materials={stock.materials}
-            askToLeaveOut={(row) => setAsked({ what: 'leave-out', row })}
-            askToRemove={(row) => (hasSavedReadings(row) ? setAsked({ what: 'remove', row }) : remove(row))}
+            definition={method.definition}
+            errorOf={cells.fieldError}
           />
-        </div>
-        <div className="row">
-          <Button onClick={() => addRow('standard')} disabled={draft.standards.length >= LIMITS.standards}>
-            Add a standard
-          </Button>
-          <Button
-            onClick={() => addRow('second-source')}
-            disabled={draft.standards.length >= LIMITS.standards}
-          >
-            Add a second source
-          </Button>
-          <Button onClick={() => change(widened)} disabled={replicatesOf(draft) >= LIMITS.replicates}>
-            Add a reading column
-          </Button>
-        </div>
-        <CurveBox live={live} definition={method.definition} />
-      </Columns>
+          <div>
+            <StandardsGrid
+              base={sheet.base}
+              draft={draft}
+              live={live}
+              typed={typed}
+              setTyped={setTyped}
+              change={change}
+              cellState={cells.stateOf}
+              definition={method.definition}
+              materials={stock.materials}
+              askToLeaveOut={(row) => setAsked({ what: 'leave-out', row })}
+              askToRemove={(row) => (hasSavedReadings(row) ? setAsked({ what: 'remove', row }) : remove(row))}
+            />
+          </div>
+          <div className="row">
+            <Button onClick={() => addRow('standard')} disabled={draft.standards.length >= LIMITS.standards}>
+              Add a standard
+            </Button>
+            <Button
+              onClick={() => addRow('second-source')}
+              disabled={draft.standards.length >= LIMITS.standards}
+            >
+              Add a second source
+            </Button>
+            <Button onClick={() => change(widened)} disabled={replicatesOf(draft) >= LIMITS.replicates}>
+              Add a reading column
+            </Button>
+          </div>
+          <CurveBox live={live} definition={method.definition} />
+        </Columns>
+      </div>
       <ConfirmDialog
         isOpen={asked?.what === 'submit'}
         onClose={() => setAsked(null)}

@@ -1,5 +1,5 @@
 import { LIMITS } from '@weirlight/shared/limits'
-import { useEffect, useId, useRef, useState, type CSSProperties, type KeyboardEvent } from 'react'
+import { useId, useLayoutEffect, useRef, useState, type CSSProperties, type KeyboardEvent } from 'react'
 
 const USUAL = ['Typing slip', 'Read again', 'Wrong position'] as const
 
@@ -36,7 +36,8 @@ export function ChangeReason({ anchor, title, onReason, onCancel }: ChangeReason
   const reason = isOther ? other.trim() : choice
   const isTooShort = reason.length < LIMITS.reasonMinimum
 
-  useEffect(() => {
+  // closed before it leaves the page: the browser then gives the cell its focus back
+  useLayoutEffect(() => {
     const element = dialog.current
     element?.showModal()
     return () => element?.close()

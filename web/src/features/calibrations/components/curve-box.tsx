@@ -62,13 +62,20 @@ export function CurveBox({ live, definition }: CurveBoxProps) {
       label: String(row.concentration),
       absorbance: readBack.get(row.key)?.meanAbsorbance ?? null,
     }))
+  const legend = [
+    rows.some((row) => row.role === 'second-source' && row.absorbances.length > 0) &&
+      'Diamond: second source.',
+    rows.some((row) => row.leftOut) && 'Cross: left out of the curve.',
+  ]
+    .filter(Boolean)
+    .join(' ')
   const summary = stored
     ? `Absorbance at ${definition.wavelengthNm} nm against ${analyteName} in mg/L: ${fit?.n ?? 0} readings, slope ${significant(stored.slope, 4)} per mg/L, intercept ${significant(stored.intercept, 3)}.`
     : 'No curve yet.'
   return (
     <Box>
       {steps.length > 0 && <TintLadder band={definition.band} steps={steps} unit="mg/L" />}
-      <Chart option={curve} summary={summary} height={300} />
+      <Chart option={curve} summary={summary} height={300} {...(legend ? { caption: legend } : {})} />
       <Chart
         option={residuals}
         summary="Residuals of the readings in thousandths of absorbance."

@@ -100,7 +100,7 @@ export function StandardsGrid(props: StandardsGridProps) {
   }
 
   return (
-    <div ref={frame}>
+    <div ref={frame} className="standards">
       <RunGrid<DraftStandard>
         label="Standards and their readings"
         rows={draft.standards}

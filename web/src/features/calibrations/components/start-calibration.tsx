@@ -5,7 +5,7 @@ import { useState } from 'react'
 import { useNavigate } from 'react-router-dom'
 import { paths, useLaboratoryTime } from '../../../lib'
 import { useEndpointForm } from '../../../lib/use-endpoint-form'
-import { Box, KeyValues, Loaded, Strip } from '../../../ui'
+import { Box, Columns, KeyValues, Loaded, Strip } from '../../../ui'
 import { FormProblem } from '../../../ui/form-problem'
 import { methodsQuery } from '../api/calibration-queries'
 import { bodyOf, type CalibrationDraft } from '../draft/calibration-draft'
@@ -101,7 +101,13 @@ export function StartCalibration({ methodId: asked }: { methodId: string }) {
         {methodId !== '' && (
           <Loaded query={method}>
             {(found) => (
-              <>
+              <Columns
+                side={
+                  <Box title="What the method asks for">
+                    <MethodFacts method={found} />
+                  </Box>
+                }
+              >
                 <Box title="Instrument and cell">
                   <div className="set-up">
                     <Form.Item name="instrumentId" label="Instrument" required>
@@ -130,9 +136,6 @@ export function StartCalibration({ methodId: asked }: { methodId: string }) {
                     </Form.Item>
                   </div>
                 </Box>
-                <Box title="What the method asks for">
-                  <MethodFacts method={found} />
-                </Box>
                 {stock.problem && (
                   <Strip tone="above">Instruments and lots could not be read; try again in a moment.</Strip>
                 )}
@@ -144,7 +147,7 @@ export function StartCalibration({ methodId: asked }: { methodId: string }) {
                     It becomes a draft with a number of its own, with standards proposed by the method.
                   </span>
                 </div>
-              </>
+              </Columns>
             )}
           </Loaded>
         )}

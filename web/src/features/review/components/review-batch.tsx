@@ -138,7 +138,7 @@ function ReviewBatch({ batch }: { batch: BatchView }) {
           batch={batch}
           {...(isToReview && isReviewer && !isOwn ? { rerun: { chosen: rerun, toggle } } : {})}
         />
-        <Box title="The run" isFlush>
+        <Box title="The run">
           <ReadRunSheet batch={batch} />
         </Box>
       </div>
