@@ -5,7 +5,7 @@ import { OpeningService, RunningService } from '../../modules/batches/index.js'
 import type { TestApp } from '../test-app.js'
 import { aLot, anAnalyst } from './bench.builders.js'
 import { aCalibrationInForce } from './calibrations.builders.js'
-import { anAcceptedSample, aReceivingForm } from './samples.builders.js'
+import { anAcceptedSample, type aReceivingForm } from './samples.builders.js'
 
 type Form = BodyInput<typeof openBatch>
 
