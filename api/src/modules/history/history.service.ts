@@ -98,9 +98,8 @@ export class HistoryService {
     if (rest.thingId !== undefined && !/^\d{1,18}$/.test(rest.thingId)) {
       throw invalidInput([{ path: 'thingId', message: 'This is not a valid reference.' }])
     }
-    const [first, last] = await Promise.all(
-      [from, to].map((day) => day && this.history.boundsOf(this.db.read, day)),
-    )
+    const first = from && (await this.history.boundsOf(this.db.read, from))
+    const last = to && (await this.history.boundsOf(this.db.read, to))
     const wanted = number?.trim().toUpperCase() || undefined
     const family = wanted === undefined ? [] : await this.families.find(this.db.read, wanted)
     return {

@@ -3,6 +3,7 @@ import { describe, expect, it } from 'vitest'
 import { aPersonWithPassphrase, PASSPHRASE } from '../../testing/accounts.js'
 import { useTestApp, type TestApp } from '../../testing/test-app.js'
 import { Agent } from '../../testing/agent.js'
+import { SignInThrottle } from '../../platform/index.js'
 import { UsersModule } from './users.module.js'
 
 const at = useTestApp({ imports: [UsersModule] })
@@ -115,6 +116,31 @@ describe('guessing', () => {
       payload: { email: person.email, password: PASSPHRASE },
     })
     expect(elsewhere.statusCode).toBe(200)
+  })
+})
+
+describe('guessing from many addresses, or at many accounts', () => {
+  const from = (remoteAddress: string, email: string, password: string) =>
+    at().app.inject({
+      method: 'POST',
+      url: '/api/session',
+      headers: { 'x-weirlight': '1' },
+      remoteAddress,
+      payload: { email, password },
+    })
+
+  it('holds up strangers, and not whoever signed in from their address before', async () => {
+    const person = await aPersonWithPassphrase(at())
+    expect((await from('192.0.2.9', person.email, PASSPHRASE)).statusCode).toBe(200)
+    // tries that are begun and never succeed, without the time that hashing takes
+    const throttle = at().get(SignInThrottle)
+    for (let i = 0; i < 30; i += 1) await throttle.begin(person.email, `198.51.100.${i}`)
+    expect((await from('203.0.113.5', person.email, PASSPHRASE)).statusCode).toBe(429)
+    expect((await from('192.0.2.9', person.email, PASSPHRASE)).statusCode).toBe(200)
+
+    for (let i = 0; i < 60; i += 1) await throttle.begin(`nobody-${i}@people.example`, '192.0.2.9')
+    expect((await from('192.0.2.9', 'nobody-99@people.example', 'a wrong one')).statusCode).toBe(429)
+    expect((await from('192.0.2.9', person.email, PASSPHRASE)).statusCode).toBe(200)
   })
 })
 

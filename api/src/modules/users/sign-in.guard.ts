@@ -20,7 +20,7 @@ export class SignInGuard extends AuthGuard('passphrase') {
   }
 
   override handleRequest<TUser>(error: unknown, account: TUser | false): TUser {
-    if (error) throw error
+    if (error) throw error instanceof Error ? error : new Error('The strategy failed.', { cause: error })
     if (!account)
       throw new ProblemError('wrong-passphrase', 'The e-mail address or the passphrase is not right.')
     return account

@@ -17,8 +17,8 @@ export interface Try {
 
 /**
  * Slows guessing down without locking anybody out: a refused try is not counted, so nobody can keep an
- * account shut for good; and whoever signed in from an address before is held up by the tries made there alone,
- * however many the rest of the world makes.
+ * account shut for good; and whoever signed in from an address before is held up by their own tries there alone,
+ * however many others are made at the account, or from behind the same address at other accounts.
  */
 @Injectable()
 export class SignInThrottle {
@@ -53,8 +53,9 @@ export class SignInThrottle {
 }
 
 function isOver(counts: Counts): boolean {
-  if (counts.pair >= TRIES.pair || counts.address >= TRIES.address) return true
-  return counts.account >= TRIES.account && !counts.isKnownAddress
+  if (counts.pair >= TRIES.pair) return true
+  if (counts.isKnownAddress) return false
+  return counts.account >= TRIES.account || counts.address >= TRIES.address
 }
 
 function refusal({ secondsLeft }: Counts): ProblemError {
