@@ -22,6 +22,6 @@ import { StoryService } from './story.service.js'
     StoryService,
     StoryRepository,
   ],
-  exports: [ResultsService],
+  exports: [ResultsService, ReviewService],
 })
 export class ResultsModule {}

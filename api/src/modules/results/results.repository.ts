@@ -156,7 +156,7 @@ export class ResultsRepository {
   }
 
   /** One result a position; a batch that was sent back and submitted again stores its new values in their place. */
-  async store(trx: Trx, results: readonly ResultToStore[]): Promise<void> {
+  async store(trx: Trx, results: readonly ResultToStore[], at: Date): Promise<void> {
     if (results.length === 0) return
     await trx
       .insertInto('results')
@@ -194,6 +194,7 @@ export class ResultsRepository {
           flags: eb.ref('excluded.flags'),
           inputs: eb.ref('excluded.inputs'),
           engineVersion: eb.ref('excluded.engineVersion'),
+          measuredAt: at,
           version: eb('results.version', '+', 1),
         })),
       )

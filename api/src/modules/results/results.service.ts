@@ -11,6 +11,7 @@ import { convertUnit } from '@weirlight/shared/assay'
 import {
   Clock,
   Database,
+  invalidInput,
   notFound,
   toCsv,
   toPage,
@@ -93,7 +94,11 @@ export class ResultsService {
 
   async export({ format, ...filter }: QueryOf<typeof exportResults>): Promise<FileAnswer> {
     const found = await this.results.list(this.db.read, { after: undefined, limit: EXPORT_ROWS, filter })
-    const rows = found.slice(0, EXPORT_ROWS).map(exportRow)
+    if (found.length > EXPORT_ROWS) {
+      const message = `These are more than ${EXPORT_ROWS} results; choose a shorter time.`
+      throw invalidInput([{ path: 'from', message }])
+    }
+    const rows = found.map(exportRow)
     const now = this.clock.now()
     const name = `results-${now.toISOString().slice(0, 10)}`
     if (format === 'csv') {

@@ -16,15 +16,15 @@ export class ReviewRepository {
     return row
   }
 
-  /** Everyone whose hand is in the batch: none of them may release it. */
+  /** Everyone whose hand is in the batch, by a reading, a dilution or what was said of a finding: none of them may release it. */
   async hands(db: Executor, batchId: string): Promise<string[]> {
-    const rows = await db
-      .selectFrom('positionReadings')
-      .select('readBy')
-      .distinct()
-      .where('batchId', '=', batchId)
-      .execute()
-    return rows.map((row) => row.readBy)
+    const { rows } = await sql<{ userId: string }>`
+      select read_by as user_id from position_readings where batch_id = ${batchId}
+      union select by_id from finding_actions where batch_id = ${batchId}
+      union select h.actor_id from positions p join history h
+        on h.thing = 'positions' and h.thing_id = p.id and h.operation = 'update'
+        where p.batch_id = ${batchId} and h.actor_id is not null`.execute(db)
+    return rows.map((row) => row.userId)
   }
 
   /** What a result needs to know of its determination; locked, in one order, so that two batches never wait for each other. */
@@ -111,8 +111,16 @@ export class ReviewRepository {
   }
 
   /** A sample is reported when nothing of it is left to measure; a rerun takes it back into analysis. */
-  async settleSamples(trx: Trx, ids: readonly string[]): Promise<{ id: string; isReported: boolean }[]> {
-    if (ids.length === 0) return []
+  async settleSamples(trx: Trx, ids: readonly string[]): Promise<void> {
+    if (ids.length === 0) return
+    // locked first and counted after: of two batches that end one sample at the same moment, the second sees the first
+    await trx
+      .selectFrom('samples')
+      .select('id')
+      .where('id', 'in', [...ids])
+      .orderBy('id')
+      .forUpdate()
+      .execute()
     const locked = await trx
       .selectFrom('samples')
       .select((eb) => [
@@ -130,17 +138,19 @@ export class ReviewRepository {
       ])
       .where('samples.id', 'in', [...ids])
       .orderBy('samples.id')
-      .forUpdate()
       .execute()
-    for (const { id, state, isOpen } of locked) {
-      const next = isOpen ? 'in-analysis' : 'reported'
-      if (state === next) continue
+    for (const next of ['in-analysis', 'reported'] as const) {
+      const moved = locked.filter((row) => row.isOpen === (next === 'in-analysis') && row.state !== next)
+      if (moved.length === 0) continue
       await trx
         .updateTable('samples')
-        .set({ state: next, version: sql`version + 1` })
-        .where('id', '=', id)
+        .set((eb) => ({ state: next, version: eb('version', '+', 1) }))
+        .where(
+          'id',
+          'in',
+          moved.map(({ id }) => id),
+        )
         .execute()
     }
-    return locked.map(({ id, isOpen }) => ({ id, isReported: !isOpen }))
   }
 }

@@ -25,7 +25,6 @@ import { AuthorisationService, SigningService } from '../users/index.js'
 import { batchReleased } from './events.js'
 import { ResultsRepository, type ResultToStore } from './results.repository.js'
 import { ReviewRepository } from './review.repository.js'
-import { signedContent } from './signed-content.js'
 
 type Determination = Awaited<ReturnType<ReviewRepository['lockDeterminations']>>[number]
 
@@ -65,6 +64,7 @@ export class ReviewService {
       await this.results.store(
         trx,
         samples.map((row) => toStore({ row, view, determination: found(determinations, row) })),
+        this.clock.now(),
       )
       await this.review.moveDeterminations(trx, { ids: [...determinations.keys()], state: 'measured' })
       await this.review.submit(trx, { id, userId: actor.userId, at: this.clock.now() })
@@ -134,7 +134,7 @@ export class ReviewService {
         await this.review.release(trx, { id, userId: actor.userId, at, comment: body.comment })
         const sampleIds = [...new Set(results.map((row) => row.sampleId))]
         await this.review.settleSamples(trx, sampleIds)
-        const content = signedContent(await this.results.ofBatch(trx, id))
+        const content = await this.batches.signedContent(trx, id)
         for (const meaning of ['reviewed', 'released'] as const) {
           await this.signing.sign(trx, { actor, thing: 'batches', thingId: id, meaning, content })
         }

@@ -37,6 +37,8 @@ export interface Alerts {
   closedBy: Int8 | null;
   closingNote: Generated<string>;
   id: Generated<Int8>;
+  limitId: Int8 | null;
+  limitSnapshot: Json | null;
   notifiedAt: Timestamp | null;
   number: string;
   raisedAt: Generated<Timestamp>;
