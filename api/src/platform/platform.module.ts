@@ -83,7 +83,8 @@ export class PlatformModule {
       {
         provide: Database,
         inject: [Settings, Clock],
-        useFactory: (settings: Settings, clock: Clock) => openDatabase(settings, clock),
+        useFactory: (settings: Settings, clock: Clock) =>
+          openDatabase(settings, { clock, followsPinnedClock: options.isOwnerAllowed ?? false }),
       },
       {
         provide: JobsService,
@@ -127,10 +128,13 @@ export class PlatformModule {
   }
 }
 
-function openDatabase(settings: Settings, clock: Clock): Database {
+function openDatabase(
+  settings: Settings,
+  { clock, followsPinnedClock }: { clock: Clock; followsPinnedClock: boolean },
+): Database {
   const pool = openPool({ url: settings.databaseUrl, size: settings.databasePool, name: 'weirlight' })
   const readPool = settings.databaseReadUrl
     ? openPool({ url: settings.databaseReadUrl, size: settings.databasePool, name: 'weirlight-read' })
     : undefined
-  return new Database({ pool, readPool, clock })
+  return new Database({ pool, readPool, clock, followsPinnedClock })
 }

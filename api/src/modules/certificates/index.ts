@@ -1,1 +1,2 @@
 export { CertificatesModule } from './certificates.module.js'
+export { RenderingService } from './rendering.service.js'

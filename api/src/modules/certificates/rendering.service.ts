@@ -62,6 +62,12 @@ export class RenderingService implements OnModuleInit {
     })
   }
 
+  /** Every certificate without a document, here and now: for the loader of the demonstration's past. */
+  async sweepNow(): Promise<void> {
+    const ids = await this.certificates.unrendered(this.db.fresh)
+    await Promise.all(ids.map((id) => this.render({ id })))
+  }
+
   @JobHandler(sweepCertificates)
   async sweep(): Promise<void> {
     const ids = await this.certificates.unrendered(this.db.fresh)

@@ -11,6 +11,8 @@ export interface DatabaseOptions {
   /** a replica for reading; the main pool when absent */
   readPool?: pg.Pool | undefined
   clock: Clock
+  /** the loader of the demonstration's past: every connection follows the pinned clock */
+  followsPinnedClock?: boolean
 }
 
 @Injectable()
@@ -26,7 +28,7 @@ export class Database implements OnApplicationShutdown {
   constructor(options: DatabaseOptions) {
     this.pool = options.pool
     this.clock = options.clock
-    this.write = kyselyOn(options.pool)
+    this.write = kyselyOn(options.pool, options.followsPinnedClock ? () => this.clock.pinnedAt : undefined)
     this.fresh = this.write
     this.read = options.readPool ? kyselyOn(options.readPool) : this.write
   }

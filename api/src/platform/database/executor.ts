@@ -1,4 +1,4 @@
-import { CamelCasePlugin, Kysely, PostgresDialect, type Transaction } from 'kysely'
+import { CamelCasePlugin, CompiledQuery, Kysely, PostgresDialect, type Transaction } from 'kysely'
 import type pg from 'pg'
 import type { DB } from './types.gen.js'
 
@@ -8,9 +8,20 @@ export type Executor = Kysely<DB>
 export type Trx = Transaction<DB>
 export type { DB } from './types.gen.js'
 
-export function kyselyOn(pool: pg.Pool): Kysely<DB> {
+/** `pinnedAt`: for the loader of the demonstration's past, whose reads outside a transaction must see that time as well. */
+export function kyselyOn(pool: pg.Pool, pinnedAt?: () => Date | undefined): Kysely<DB> {
   return new Kysely<DB>({
-    dialect: new PostgresDialect({ pool }),
+    dialect: new PostgresDialect({
+      pool,
+      ...(pinnedAt && {
+        onReserveConnection: async (connection) => {
+          const at = pinnedAt()?.toISOString() ?? ''
+          await connection.executeQuery(
+            CompiledQuery.raw(`select set_config('weirlight.now', $1, false)`, [at]),
+          )
+        },
+      }),
+    }),
     // columns are snake_case in SQL and camelCase in code; keys inside jsonb stay as written
     plugins: [new CamelCasePlugin({ maintainNestedObjectKeys: true })],
   })

@@ -6,3 +6,9 @@ export function writeOutput(path: string, content: Buffer): void {
   mkdirSync(dirname(path), { recursive: true })
   writeFileSync(path, content)
 }
+
+/** The same, readable by its owner alone. */
+export function writeSecret(path: string, content: Buffer): void {
+  mkdirSync(dirname(path), { recursive: true })
+  writeFileSync(path, content, { mode: 0o600 })
+}
