@@ -65,6 +65,8 @@ export function controlChart(input: ControlChartInput): EChartsOption {
       {
         type: 'line',
         name: 'control values',
+        // a narrow drawing would leave points out, signals among them
+        showAllSymbol: true,
         lineStyle: { color: colours.weir, width: 1.25 },
         data: points.map((point) => {
           const isSignal = point.signals.length > 0

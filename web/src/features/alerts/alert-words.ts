@@ -21,8 +21,8 @@ export const ruleWords = (rule: string): string => RULE_WORDS[rule] ?? rule
 
 const KIND_WORDS: Record<string, string> = {
   mcl: 'maximum contaminant level',
-  secondary: 'secondary level, aesthetic',
-  aesthetic: 'aesthetic objective',
+  secondary: 'aesthetic, not a health limit',
+  aesthetic: 'aesthetic, not a health limit',
   guideline: 'guideline value',
   indicator: 'indicator parameter',
 }

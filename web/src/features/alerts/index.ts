@@ -1,6 +1,5 @@
 export { AlertById, Agency } from './components/alert-page'
 export { AlertsList } from './components/alerts-list'
-export { DeliveriesTable } from './components/deliveries-table'
 export { EarlierResults } from './components/earlier-results'
 export { LawClocks } from './components/law-clocks'
 export { SeenDialog } from './components/seen-dialog'

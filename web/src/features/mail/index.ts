@@ -1,1 +1,2 @@
+export { DeliveriesTable } from './components/deliveries-table'
 export { MailList } from './components/mail-list'

@@ -30,7 +30,9 @@ export function AlertActions({ alert }: { alert: AlertView }) {
           Close
         </Button>
       )}
-      {!isAnswered(alert) && <span className="note">It can be closed once the client has answered.</span>}
+      {!isAnswered(alert) && (
+        <span className="note act-note">It can be closed once the client has answered.</span>
+      )}
       <ReasonDialog
         isOpen={asked === 'close'}
         onClose={() => setAsked(null)}

@@ -15,11 +15,11 @@ import {
   StatusTag,
   Strip,
 } from '../../../ui'
+import { DeliveriesTable } from '../../mail'
 import { shownNumber } from '../../results'
 import { alertQuery, type AlertView } from '../api/alert-queries'
 import { isAnswered, limitKindWords, overWhat, ruleWords, whatWasFound } from '../alert-words'
 import { AlertActions } from './alert-actions'
-import { DeliveriesTable } from './deliveries-table'
 import { EarlierResults } from './earlier-results'
 import { LawClocks } from './law-clocks'
 import './alerts.css'
@@ -147,7 +147,7 @@ function foundItems(alert: AlertView) {
       ),
     },
     { term: 'Limit', detail: alert.limitName },
-    { term: 'Kind', detail: limitKindWords(alert.limitKind) },
+    { term: 'Kind of limit', detail: limitKindWords(alert.limitKind) },
     { term: 'Source', detail: alert.limitSource },
   ]
 }

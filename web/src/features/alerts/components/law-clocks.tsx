@@ -1,11 +1,15 @@
-import { useLaboratoryTime } from '../../../lib'
+import { useLaboratoryTime, useNow } from '../../../lib'
 import { Box, Clock } from '../../../ui'
 import type { AlertView } from '../api/alert-queries'
 import { isAnswered } from '../alert-words'
 
-/** What laws and house rules ask for, as data with its source. The product says; the agency decides. */
+/**
+ * What laws and house rules ask for, as data with its source. The product says; the agency decides. Whether a duty was
+ * done is not known here, so a clock that has run out is not called late.
+ */
 export function LawClocks({ alert }: { alert: AlertView }) {
   const { at } = useLaboratoryTime()
+  const now = useNow()
   return (
     <Box title="Clocks of laws and house rules">
       {alert.clocks.length === 0 ? (
@@ -25,8 +29,10 @@ export function LawClocks({ alert }: { alert: AlertView }) {
                   <span className="quiet">not started</span>
                 ) : (
                   <>
-                    {isAnswered(alert) ? null : <Clock dueAt={clock.dueAt} />}
-                    <div className="note">by {at(clock.dueAt)}</div>
+                    {Date.parse(clock.dueAt) > now && !isAnswered(alert) && <Clock dueAt={clock.dueAt} />}
+                    <div className="note">
+                      {Date.parse(clock.dueAt) > now ? 'by' : 'ran out'} {at(clock.dueAt)}
+                    </div>
                   </>
                 )}
               </div>

@@ -3,7 +3,7 @@ import { STATE_MARKS } from '@weirlight/shared/states'
 import { Link } from 'react-router-dom'
 import { paths, useCan, useLaboratoryTime } from '../../../lib'
 import { Bar, Box, Loaded, MarginPage, StatusTag, Strip } from '../../../ui'
-import { DeliveriesTable } from './deliveries-table'
+import { DeliveriesTable } from '../../mail'
 import { certificateQuery, type CertificateView } from '../api/certificate-queries'
 import { CertificateActions } from './certificate-actions'
 import { CertifiedChanges, CertifiedNotes, CertifiedSample } from './certified-facts'
@@ -84,7 +84,7 @@ function CertificateOnPage({ certificate }: { certificate: CertificateView }) {
           <CertifiedChanges snapshot={snapshot} />
           <CertifiedSample snapshot={snapshot} />
           <Box title="Who it was sent to">
-            <DeliveriesTable deliveries={certificate.deliveries} />
+            <DeliveriesTable deliveries={certificate.deliveries} label="Messages with this certificate" />
           </Box>
           <ProofBox certificate={certificate} />
           <CertifiedNotes snapshot={snapshot} />

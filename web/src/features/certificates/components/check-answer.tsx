@@ -45,13 +45,18 @@ function Said({ answer, code }: { answer: CheckAnswer; code: string }) {
       </>
     )
   }
-  const issued = answer.issuedAt === null ? '' : ` on ${formatInstantWithOffset(answer.issuedAt, zone())}`
   return (
     <>
       <StatusTag mark={MARKS[answer.state]} />
       <p>
-        {laboratory} issued certificate <strong className="strong">{answer.number}</strong>
-        {issued}. {standing(answer)}
+        {laboratory} issued certificate <strong className="strong nowrap">{answer.number}</strong>
+        {answer.issuedAt !== null && (
+          <>
+            {' '}
+            on <span className="nowrap">{formatInstantWithOffset(answer.issuedAt, zone())}</span>
+          </>
+        )}
+        . {standing(answer)}
       </p>
       <p className="note">
         This says nothing of its results: whoever holds the certificate reads them there. To see that none was

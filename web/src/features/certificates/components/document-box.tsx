@@ -24,7 +24,12 @@ export function DocumentBox({ certificate }: { certificate: CertificateView }) {
         {bytes !== null && <span className="note">{kilobytes(bytes)}</span>}
       </div>
       {hasViewer && (
-        <iframe className="document-frame" src={`${href}#view=FitH`} title={`Document of ${number}`} />
+        <iframe
+          className="document-frame"
+          src={`${href}#view=FitH`}
+          title={`Document of ${number}`}
+          loading="lazy"
+        />
       )}
     </Box>
   )

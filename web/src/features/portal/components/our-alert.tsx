@@ -7,7 +7,6 @@ import { Box, Clock, KeyValues, Loaded, MarginPage, StatusTag, Strip } from '../
 import {
   Agency,
   alertQuery,
-  DeliveriesTable,
   EarlierResults,
   isAnswered,
   LawClocks,
@@ -18,6 +17,7 @@ import {
   whatWasFound,
   type AlertView,
 } from '../../alerts'
+import { DeliveriesTable } from '../../mail'
 import './portal.css'
 
 /** One alert of ours: what was found, what the law’s clocks say, and our answer. */
@@ -62,7 +62,7 @@ function AlertOfOurs({ alert }: { alert: AlertView }) {
                 term: 'Uncertainty, k = 2',
                 detail: alert.uncertaintyText,
               },
-              { term: 'Limit', detail: `${alert.limitName}, ${limitKindWords(alert.limitKind)}` },
+              { term: 'Limit', detail: `${alert.limitName} (${limitKindWords(alert.limitKind)})` },
               { term: 'Source', detail: alert.limitSource },
               { term: 'Sample', detail: alert.sampleNumber },
               { term: 'Collected', detail: at(alert.collectedAt) },
@@ -75,12 +75,12 @@ function AlertOfOurs({ alert }: { alert: AlertView }) {
               alert.acknowledgement !== '' && { term: 'Our note', detail: alert.acknowledgement },
             ]}
           />
-          <p className="note">{ruleWords(alert.decisionRule)}</p>
-          <p className="note">{alert.caution}</p>
+          <p className="note clock-caution">{ruleWords(alert.decisionRule)}</p>
+          <p className="note clock-caution">{alert.caution}</p>
           {mayAnswer && (
             <>
               {alert.answerDueAt !== null && (
-                <p>
+                <p className="own-answer">
                   Your answer: <Clock dueAt={alert.answerDueAt} />
                 </p>
               )}

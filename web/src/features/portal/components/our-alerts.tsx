@@ -30,7 +30,7 @@ export function OurAlerts() {
       <ul className="own-lines">
         {rows.map((row) => (
           <li key={row.id}>
-            <Link className="own-line" to={paths.portalAlert(row.id)}>
+            <Link className="own-line is-stacked" to={paths.portalAlert(row.id)}>
               <span className="own-what">
                 <span>
                   {whatWasFound(row)}, {row.pointName}

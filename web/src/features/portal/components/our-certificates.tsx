@@ -82,7 +82,7 @@ function CertificateLine({ row }: { row: CertificateRow }) {
   const { at } = useLaboratoryTime()
   return (
     <li className="own-row">
-      <Link className="own-line" to={paths.portalCertificate(row.id)}>
+      <Link className="own-line is-stacked" to={paths.portalCertificate(row.id)}>
         <span className="own-what">
           <span>
             {row.number}, {row.pointName}

@@ -23,27 +23,27 @@ export function TrendBox({ pointId, pointName, analyte, form, onForm }: TrendBox
   const query = useQuery(trendQuery({ pointId, analyte, form }))
   return (
     <Box title={`${determinationName(analyte, form)}, ${pointName}`}>
-      <div className="filters no-print">
-        <label>
-          Form
-          <select className="field" value={form} onChange={(event) => onForm(event.target.value as FormCode)}>
-            {FORMS.map((each) => (
-              <option key={each} value={each}>
-                {determinationName(analyte, each)}
-              </option>
-            ))}
-          </select>
-        </label>
+      <div className="trend-head">
+        <span className="note">{query.data && trendWords(query.data, day)}</span>
+        <select
+          className="field no-print"
+          aria-label="Form"
+          value={form}
+          onChange={(event) => onForm(event.target.value as FormCode)}
+        >
+          {FORMS.map((each) => (
+            <option key={each} value={each}>
+              {determinationName(analyte, each)}
+            </option>
+          ))}
+        </select>
       </div>
       <Loaded query={query}>
         {(trend) =>
           trend.points.length === 0 ? (
             <p className="quiet">Nothing of it is released at this point.</p>
           ) : (
-            <>
-              <p className="note">{trendWords(trend, day)}</p>
-              <TrendFigure trend={trend} {...(story.isAvailable ? { onPick: story.open } : {})} />
-            </>
+            <TrendFigure trend={trend} {...(story.isAvailable ? { onPick: story.open } : {})} />
           )
         }
       </Loaded>

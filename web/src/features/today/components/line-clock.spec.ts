@@ -15,6 +15,7 @@ describe('lineClockWords', () => {
     [{ at: at(6000), sense: 'due', prefix: 'expires' }, 'expires in 4 days'],
     [{ at: at(-6000), sense: 'due', prefix: 'expires' }, 'expired 4 days ago'],
     [{ at: at(-180), sense: 'since', prefix: 'unanswered' }, 'unanswered for 3 h'],
+    [{ at: at(-1800), sense: 'since', prefix: 'begun' }, 'begun 30 h ago'],
     [{ at: null, sense: 'none', prefix: 'not delivered' }, 'not delivered'],
   ] as const)('%o', (clock, words) => expect(plain(lineClockWords(clock, now))).toBe(words))
 })

@@ -1,26 +1,34 @@
+import type { delivery } from '@weirlight/shared/contracts'
 import { STATE_MARKS } from '@weirlight/shared/states'
+import type { z } from 'zod'
 import { useLaboratoryTime } from '../../../lib'
 import { DataTable, StatusTag, type Column } from '../../../ui'
-import type { CertificateView } from '../api/certificate-queries'
+import './deliveries.css'
 
-type Delivery = CertificateView['deliveries'][number]
+/** as alerts and certificates give it */
+type Delivery = z.infer<typeof delivery>
+
+interface DeliveriesTableProps {
+  deliveries: readonly Delivery[]
+  label: string
+}
 
 /** Who was written to, when it left, and what the mail server said. */
-export function DeliveriesTable({ deliveries }: { deliveries: CertificateView['deliveries'] }) {
+export function DeliveriesTable({ deliveries, label }: DeliveriesTableProps) {
   const { at } = useLaboratoryTime()
   const columns: Column<Delivery>[] = [
     {
       key: 'to',
       title: 'To',
       cell: (row) => (
-        <span className="break">
+        <span className="delivery-to">
           {row.to}
-          {row.lastError !== '' && <span className="certificate-extra above">{row.lastError}</span>}
+          {row.lastError !== '' && <span className="delivery-error above">{row.lastError}</span>}
         </span>
       ),
     },
     { key: 'state', title: 'State', cell: (row) => <StatusTag mark={STATE_MARKS.mail[row.state]} /> },
-    { key: 'sent', title: 'Sent', isNarrow: true, text: (row) => (row.sentAt ? at(row.sentAt) : '–') },
+    { key: 'sent', title: 'Sent', text: (row) => (row.sentAt ? at(row.sentAt) : '–') },
     {
       key: 'attempts',
       title: 'Attempts',
@@ -31,11 +39,14 @@ export function DeliveriesTable({ deliveries }: { deliveries: CertificateView['d
   ]
   return (
     <DataTable
-      label="Messages with this certificate"
+      label={label}
       rows={deliveries}
       columns={columns}
       rowKey={(row) => row.mailId}
-      empty={{ title: 'Nobody was written to yet' }}
+      empty={{
+        title: 'Nobody was written to yet',
+        text: 'Messages go to the contacts of the client that are set to get them.',
+      }}
     />
   )
 }
