@@ -1,7 +1,9 @@
 import { ReceivingService, SamplesService } from '../modules/samples/index.js'
 import { DraftsService, DecisionsService } from '../modules/calibrations/index.js'
 import type { DemoWorld } from './demo-world.js'
-import { draftOf } from './work-weeks.js'
+import { draftOf } from './calibrate.js'
+import { answerFindings, openRun, readRun } from './run-batches.js'
+import { ReviewService } from '../modules/results/index.js'
 
 /**
  * What lies on the bench when the demonstration begins: samples of this morning, some of them not yet accepted, and a
@@ -56,4 +58,28 @@ export async function leaveWorkOnTheBench(world: DemoWorld): Promise<void> {
       clientConsent: isAccepted ? '' : 'By e-mail of this morning, kept with the sample.',
     })
   }
+
+  await leaveRuns(world, hoursAgo)
+}
+
+/** One run waits for its review, one is half read. */
+async function leaveRuns(world: DemoWorld, hoursAgo: (hours: number) => Date): Promise<void> {
+  const [first, second] = world.ofRole('technician')
+  if (!first || !second) throw new Error('The demonstration needs two technicians.')
+  const iron = world.method('Fe')
+  world.at(hoursAgo(1.4))
+  const opened = await openRun(world, { method: iron, technician: first, start: hoursAgo(1.4) })
+  if (opened) {
+    world.at(hoursAgo(1.1))
+    const read = await readRun(world, { batch: opened, method: iron, technician: first, hasDrifted: false })
+    const answered = await answerFindings(world, { batch: read, technician: first, hasDrifted: false })
+    world.at(hoursAgo(0.9))
+    await world.service(ReviewService).submit(first, answered.id, { version: answered.version })
+  }
+  const manganese = world.method('Mn')
+  world.at(hoursAgo(0.5))
+  const half = await openRun(world, { method: manganese, technician: second, start: hoursAgo(0.5) })
+  if (!half) return
+  world.at(hoursAgo(0.3))
+  await readRun(world, { batch: half, method: manganese, technician: second, hasDrifted: false, upTo: 5 })
 }

@@ -8,7 +8,8 @@ import { DemoWorld } from './demo-world.js'
 import { makeHistoryPartitions } from './demo.repository.js'
 import { foundLaboratory } from './found-laboratory.js'
 import { leaveWorkOnTheBench } from './leave-work.js'
-import { workWeek, type Incidents, type Week } from './work-weeks.js'
+import type { Incidents, Week } from './week.js'
+import { workWeek } from './work-weeks.js'
 
 export interface DemoAccount {
   role: Role
@@ -21,6 +22,7 @@ const WEEKS = 17
 const DAY = 86_400_000
 
 const INCIDENTS: Incidents = {
+  lastAnswered: 16,
   returnedCalibration: 4,
   failedVerification: 9,
   excursions: [
