@@ -21,6 +21,7 @@ import { aCalibrationInForce } from '../../testing/builders/calibrations.builder
 import { anAcceptedSample, aReceivedSample } from '../../testing/builders/samples.builders.js'
 import { aUser } from '../../testing/people.js'
 import { useTestApp } from '../../testing/test-app.js'
+import { SamplesService } from '../samples/index.js'
 import { BatchesModule } from './index.js'
 
 // Expected values are constructed where nothing else is said; the line is that of the calibration's builder.
@@ -104,6 +105,25 @@ describe('opening a batch', () => {
     const taken = await agent.call(getSample, { params: { id: sample.sampleId ?? '' } })
     expect(taken.state).toBe('in-analysis')
     expect(taken.details[0]).toMatchObject({ state: 'in-batch', batchNumber: batch.number })
+  })
+
+  it('takes the limits that were valid on the day of collection', async () => {
+    // iron, Canada: 0.3 mg/L until 2024-12-28, then 0.1 mg/L (fixtures/reference/limits.json)
+    const technician = await aUser(database().db)
+    const ids: string[] = []
+    for (const collectedAt of ['2024-12-27T12:00:00Z', '2024-12-29T12:00:00Z']) {
+      const sample = await aReceivedSample(at(), { programme: 'canada-drinking-water', collectedAt })
+      const decided = await at().get(SamplesService).decide(technician, sample.id, {
+        version: sample.version,
+        verdict: 'accepted-with-qualification',
+        reason: 'Holding time over',
+        clientConsent: '',
+      })
+      ids.push(decided.details[0]?.id ?? '')
+    }
+    const { batch } = await anOpenBatch(at(), { determinationIds: ids })
+    const values = [0, 1].map((nth) => rowOf(batch, 'sample', nth).limits.map(({ value }) => value))
+    expect(values).toEqual([['0.3'], ['0.1']])
   })
 
   it('the same form twice, also at once, is one batch', async () => {
@@ -376,10 +396,11 @@ describe('readings', () => {
     expect((await agent.refused(saveReadings, input)).detail).toContain(lot?.number ?? 'none')
     await setLot('in-use')
     const qa = await at().as(await aSigner(database()))
-    await qa.call(invalidateCalibration, {
+    const ended = await qa.call(invalidateCalibration, {
       params: { id: batch.calibrationId },
       body: { version: 3, reason: 'Lamp' },
     })
+    expect(ended.batches).toEqual([{ id: batch.id, number: batch.number }])
     expect((await agent.refused(saveReadings, input)).detail).toContain('is invalidated')
   })
 

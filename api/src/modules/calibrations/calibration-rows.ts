@@ -111,3 +111,10 @@ export interface LockedCalibration {
   validUntil: Date | null
   version: number
 }
+
+export interface CalibrationUse {
+  number: string
+  state: CalibrationStateName
+  validUntil: Date | null
+  now: Date
+}

@@ -1,7 +1,12 @@
 import { Injectable } from '@nestjs/common'
 import { sql } from 'kysely'
 import type { Executor, Trx } from '../../platform/index.js'
-import type { CalibrationListRow, CalibrationWholeRow, LockedCalibration } from './calibration-rows.js'
+import type {
+  CalibrationListRow,
+  CalibrationUse,
+  CalibrationWholeRow,
+  LockedCalibration,
+} from './calibration-rows.js'
 
 const ROW = sql`k.id, k.number, k.method_id, m.title as method_title, m.analyte, m.form, k.instrument_id,
   i.name as instrument_name, k.cell_path_cm, k.state, k.prepared_by, u.name as prepared_by_name, k.submitted_at, k.valid_until,
@@ -59,6 +64,15 @@ export class CalibrationsRepository {
           from batches b where b.calibration_id = k.id), '[]') as batches
       ${FROM} left join material_lots l on l.id = k.stock_lot_id left join calibrations r on r.id = k.replaced_by
       where k.id = ${id}`.execute(db)
+    return rows[0]
+  }
+
+  /** Whether results may be read off it, in one short look. */
+  async findUse(db: Executor, id: string): Promise<CalibrationUse | undefined> {
+    const { rows } = await sql<CalibrationUse>`
+      select number, state, valid_until, weirlight_now() as now from calibrations where id = ${id}`.execute(
+      db,
+    )
     return rows[0]
   }
 
@@ -121,14 +135,14 @@ export class CalibrationsRepository {
   async findValidity(
     db: Executor,
     { lotIds, maxAgeDays }: { lotIds: readonly string[]; maxAgeDays: number },
-  ): Promise<{ until: Date; now: Date }> {
-    const { rows } = await sql<{ until: Date; now: Date }>`
-      select weirlight_now() as now, least(weirlight_now() + make_interval(hours => (${maxAgeDays} * 24)::int),
+  ): Promise<Date> {
+    const { rows } = await sql<{ until: Date }>`
+      select least(weirlight_now() + make_interval(hours => (${maxAgeDays} * 24)::int),
         (select ((min(expires_on) + 1)::timestamp at time zone coalesce((select time_zone from laboratory), 'UTC'))
           from material_lots where id = any(${lotIds}::bigint[]))) as until`.execute(db)
     const [row] = rows
     if (!row) throw new Error('The database gave no time.')
-    return row
+    return row.until
   }
 
   /** One at a time for a method on an instrument and cell: the next sees what the last put in force. */

@@ -11,7 +11,7 @@ import {
   type Executor,
 } from '../../platform/index.js'
 import { SigningService } from '../users/index.js'
-import type { CalibrationWholeRow, StoredFit } from './calibration-rows.js'
+import type { CalibrationUse, CalibrationWholeRow, StoredFit } from './calibration-rows.js'
 import { signedContent, toListRow, toView, type CalibrationWhole } from './calibration-whole.js'
 import { CalibrationsRepository } from './calibrations.repository.js'
 import { StandardsRepository } from './standards.repository.js'
@@ -60,13 +60,15 @@ export class CalibrationsService {
 
   /** The calibration, if it may carry results at this moment. @throws not-allowed-now with what it is instead */
   async getInForce(db: Executor, id: string): Promise<CalibrationInForce> {
+    const use = await this.calibrations.findUse(db, id)
     const row = await this.calibrations.find(db, id)
-    if (!row) throw notFound('calibration')
-    calibrationStates.move(row.state, 'carry')
+    if (!use || !row) throw notFound('calibration')
+    calibrationStates.move(use.state, 'carry')
+    refuseOver(use)
     const { stored, validUntil } = row
-    if (!stored || !validUntil)
+    if (!stored || !validUntil) {
       throw new Error(`Calibration ${row.number} is in force without a fit or an end.`)
-    await this.refuseOver(db, row)
+    }
     return { row, stored, validUntil }
   }
 
@@ -75,17 +77,16 @@ export class CalibrationsService {
    * verification standards vouch for it. Not so once its time is over or it was taken out of force.
    */
   async requireUsable(db: Executor, id: string): Promise<void> {
-    const row = await this.calibrations.find(db, id)
-    if (!row) throw notFound('calibration')
-    if (row.state !== 'replaced') calibrationStates.move(row.state, 'carry')
-    await this.refuseOver(db, row)
+    const use = await this.calibrations.findUse(db, id)
+    if (!use) throw notFound('calibration')
+    if (use.state !== 'replaced') calibrationStates.move(use.state, 'carry')
+    refuseOver(use)
   }
+}
 
-  private async refuseOver(db: Executor, row: CalibrationWholeRow): Promise<void> {
-    // the database's clock decides, as it does for the job that writes the end down
-    const { now } = await this.calibrations.findValidity(db, { lotIds: [], maxAgeDays: 0 })
-    if (row.validUntil && row.validUntil > now) return
-    const until = row.validUntil?.toISOString().slice(0, 16).replace('T', ' ') ?? ''
-    throw notAllowedNow(`Calibration ${row.number} was valid until ${until} UTC. Measure with a newer one.`)
-  }
+/** The database's clock decides, as it does for the job that writes the end down. */
+function refuseOver({ number, validUntil, now }: CalibrationUse): void {
+  if (validUntil && validUntil > now) return
+  const until = validUntil?.toISOString().slice(0, 16).replace('T', ' ') ?? ''
+  throw notAllowedNow(`Calibration ${number} was valid until ${until} UTC. Measure with a newer one.`)
 }

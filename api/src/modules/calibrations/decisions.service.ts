@@ -189,8 +189,7 @@ export class DecisionsService {
       throw notAllowedNow(`${whys} It cannot be signed for use any more; send it back.`)
     }
     const maxAgeDays = whole.row.definition.calibrationMaxAgeDays.value
-    const { until } = await this.calibrations.findValidity(trx, { lotIds, maxAgeDays })
-    return until
+    return this.calibrations.findValidity(trx, { lotIds, maxAgeDays })
   }
 
   /** One calibration is in force for a method, instrument and cell: the one before ends in the same moment. */
