@@ -14,6 +14,34 @@ export const startTimeOf = (pid) => {
 
 export const isRunning = ({ pid, startTime }) => startTime !== undefined && startTimeOf(pid) === startTime
 
+export const parentOf = (pid) => {
+  try {
+    const stat = readFileSync(`/proc/${pid}/stat`, 'utf8')
+    return Number(stat.slice(stat.lastIndexOf(')') + 2).split(' ')[1])
+  } catch {
+    return undefined
+  }
+}
+
+const nameOf = (pid) => {
+  try {
+    return readFileSync(`/proc/${pid}/comm`, 'utf8').trim()
+  } catch {
+    return ''
+  }
+}
+
+/** The npm that runs this script, if one does: a shell may stand between the two. */
+export const npmAbove = () => {
+  if (!process.env.npm_lifecycle_event) return undefined
+  let pid = process.ppid
+  for (let i = 0; i < 3 && pid > 1; i += 1) {
+    if (nameOf(pid).startsWith('npm')) return { pid, startTime: startTimeOf(pid) }
+    pid = parentOf(pid)
+  }
+  return undefined
+}
+
 export const workingFolderOf = (pid) => {
   try {
     return readlinkSync(`/proc/${pid}/cwd`)

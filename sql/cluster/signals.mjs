@@ -1,4 +1,4 @@
-import { killRunning } from './processes.mjs'
+import { isRunning, killRunning, npmAbove } from './processes.mjs'
 import { explain, say } from './say.mjs'
 
 /**
@@ -19,13 +19,17 @@ export const runToEnd = async ({ undo, work, onInterrupt }) => {
     }
     process.exit(exitCode)
   }
-  for (const [signal, code] of Object.entries({ SIGINT: 130, SIGTERM: 143, SIGHUP: 129 })) {
-    process.on(signal, () => {
-      if (isEnding) return
-      say(`\nStopping …`)
-      void end(onInterrupt?.() ?? code)
-    })
+  const interrupt = (code) => {
+    if (isEnding) return
+    say(`\nStopping …`)
+    void end(onInterrupt?.() ?? code)
   }
+  for (const [signal, code] of Object.entries({ SIGINT: 130, SIGTERM: 143, SIGHUP: 129 })) {
+    process.on(signal, () => interrupt(code))
+  }
+  // npm passes SIGTERM on to its shell, which dies of it without a word to this program.
+  const npm = npmAbove()
+  if (npm) setInterval(() => isRunning(npm) || interrupt(143), 500).unref()
   try {
     await end(await work())
   } catch (error) {
