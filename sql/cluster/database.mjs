@@ -2,12 +2,13 @@ import { chmodSync, existsSync, readFileSync, rmSync, writeFileSync } from 'node
 import { join } from 'node:path'
 import { inRoot } from './paths.mjs'
 import { run } from './processes.mjs'
-import { Refusal, step } from './say.mjs'
+import { quiet, Refusal, say, step } from './say.mjs'
 
 const databaseName = 'weirlight'
 
-const nodeRun = async (what, args, env) => {
-  const answer = await run(process.execPath, args, { cwd: inRoot(), env: { ...process.env, ...env } })
+const nodeRun = async ({ what, program, env, onLine }) => {
+  const args = ['--enable-source-maps', inRoot('api', 'dist', program)]
+  const answer = await run(process.execPath, args, { cwd: inRoot(), env: { ...process.env, ...env }, onLine })
   if (answer.code !== 0) throw new Refusal(`${what} failed:\n\n${answer.output.slice(-6000)}`)
   return answer
 }
@@ -15,9 +16,10 @@ const nodeRun = async (what, args, env) => {
 /** Brings the schema up to date, as the role that owns it, and lets the application's role in. */
 export const migrate = ({ ownerUrl, appUrl }) =>
   step('Running the migrations', () =>
-    nodeRun('Running the migrations', ['--enable-source-maps', inRoot('api', 'dist', 'migrate.js')], {
-      OWNER_DATABASE_URL: ownerUrl,
-      DATABASE_URL: appUrl,
+    nodeRun({
+      what: 'Running the migrations',
+      program: 'migrate.js',
+      env: { OWNER_DATABASE_URL: ownerUrl, DATABASE_URL: appUrl },
     }),
   )
 
@@ -27,52 +29,49 @@ const demoMark = (home) => {
   return {
     read: () => (existsSync(file) ? readFileSync(file, 'utf8') : undefined),
     write: (state) => writeFileSync(file, state),
+    clear: () => rmSync(file, { force: true }),
   }
 }
 
 /** A restored database holds its own people and past: no demo goes on top of it. */
 export const markRestored = (home) => demoMark(home).write('restored')
 
-const loadDemo = async ({ ownerUrl, appUrl, accountsFile }) => {
-  rmSync(accountsFile, { force: true })
-  await nodeRun(
-    'Loading the demo laboratory',
-    ['--enable-source-maps', inRoot('api', 'dist', 'load-demo.js')],
-    {
-      NODE_ENV: 'production',
-      OWNER_DATABASE_URL: ownerUrl,
-      DATABASE_URL: appUrl,
-      DEMO_ACCOUNTS_FILE: accountsFile,
-    },
-  )
-  if (!existsSync(accountsFile)) throw new Refusal(`Loading the demo laboratory wrote no ${accountsFile}.`)
-}
-
-/**
- * The product's database on a cluster of ours: made when missing, migrated, and filled with the demo
- * laboratory the first time.
- */
-export const openDatabase = async ({ cluster, home, hasDemo, accountsFile, name = databaseName }) => {
-  const mark = demoMark(home)
+/** The product's database on a cluster of ours: made when missing, and migrated. */
+export const openDatabase = async ({ cluster, home, name = databaseName }) => {
   // Nobody can have worked in a half-loaded demo: the application starts after it.
-  if (mark.read() === 'loading') await cluster.dropDatabase(name)
-  const isNew = !(await cluster.hasDatabase(name))
-  if (isNew) await cluster.createDatabase(name)
-
+  if (demoMark(home).read() === 'loading') await cluster.dropDatabase(name)
+  if (!(await cluster.hasDatabase(name))) {
+    await cluster.createDatabase(name)
+    demoMark(home).clear()
+  }
   const ownerUrl = cluster.url('owner', name)
   const appUrl = cluster.url('app', name)
   await migrate({ ownerUrl, appUrl })
-
-  const isDemoWanted = hasDemo && (isNew || mark.read() === undefined)
-  if (isDemoWanted) {
-    mark.write('loading')
-    await step('Loading the demo laboratory (the first time only; a minute or so)', () =>
-      loadDemo({ ownerUrl, appUrl, accountsFile }),
-    )
-    await cluster.sql('analyze', { database: name })
-    mark.write('loaded')
-  }
   return { name, ownerUrl, appUrl }
+}
+
+/** Fills a new database with the demo laboratory. `env` is the application's: the demo goes through its services. */
+export const ensureDemo = async ({ cluster, home, database, accountsFile, env }) => {
+  const mark = demoMark(home)
+  if (mark.read() !== undefined) return
+  mark.write('loading')
+  rmSync(accountsFile, { force: true })
+  await step('Loading the demo laboratory (the first time only; some minutes)', () =>
+    nodeRun({
+      what: 'Loading the demo laboratory',
+      program: 'load-demo.js',
+      env: {
+        ...env,
+        NODE_ENV: 'production',
+        OWNER_DATABASE_URL: database.ownerUrl,
+        DEMO_ACCOUNTS_FILE: accountsFile,
+      },
+      onLine: (line) => say(quiet(`  ${line}`)),
+    }),
+  )
+  if (!existsSync(accountsFile)) throw new Refusal(`Loading the demo laboratory wrote no ${accountsFile}.`)
+  await cluster.sql('analyze', { database: database.name })
+  mark.write('loaded')
 }
 
 /** Adds what only the launcher knows to the accounts that the demo wrote, for people's tools. */

@@ -1,7 +1,7 @@
 // npm run dev: the product on this checkout's own data, rebuilt and restarted as files change.
 
 import { ensureBuilt } from './build.mjs'
-import { completeAccounts, openDatabase } from './database.mjs'
+import { completeAccounts, ensureDemo, openDatabase } from './database.mjs'
 import { undoStack } from './launch.mjs'
 import { takeLock } from './lock.mjs'
 import { demandNode, ensurePackages } from './packages.mjs'
@@ -73,7 +73,7 @@ const work = async () => {
   const accountsFile = inData('demo-accounts.json')
   const cluster = await step('Starting PostgreSQL', () => startCluster({ home, watchdog, onDeath: tell }))
   undo.push(cluster.stop)
-  const database = await openDatabase({ cluster, home, hasDemo: true, accountsFile })
+  const database = await openDatabase({ cluster, home })
   const mail = await step('Starting the mailbox', () =>
     mailService({ folder: inData(), wished: { smtp: 1025, web: 1080 }, watchdog, onDeath: tell }),
   )
@@ -90,6 +90,7 @@ const work = async () => {
     PUBLIC_URL: url,
     SESSION_SECRET: keptSecret(home, 'session-secret'),
   }
+  await ensureDemo({ cluster, home, database, accountsFile, env })
   for (const { name, args, cwd, env: own = {} } of watchers({ api, web, env })) {
     const service = startService({
       name,

@@ -1,7 +1,7 @@
 import { existsSync, mkdirSync, rmSync } from 'node:fs'
 import { join } from 'node:path'
 import { ensureBuilt } from './build.mjs'
-import { completeAccounts, openDatabase } from './database.mjs'
+import { completeAccounts, ensureDemo, openDatabase } from './database.mjs'
 import { demandNode, ensurePackages } from './packages.mjs'
 import { throwAwayFolder } from './places.mjs'
 import { freePort } from './ports.mjs'
@@ -53,6 +53,14 @@ export const startThrowAwayCluster = async ({ undo, watchdog, onDeath }) => {
   return { home, cluster }
 }
 
+/** Waits for all before it fails for one: nothing must still be starting when things are undone. */
+const together = async (promises) => {
+  const outcomes = await Promise.allSettled(promises)
+  const failed = outcomes.find(({ status }) => status === 'rejected')
+  if (failed) throw failed.reason
+  return outcomes.map(({ value }) => value)
+}
+
 /**
  * The whole product on a running cluster: database, mailbox, application.
  * `folder` takes logs, mail and ports; `home` is the cluster's.
@@ -61,30 +69,30 @@ export const startProductOn = async (options) => {
   const { cluster, home, folder, accountsFile, undo, watchdog, onDeath } = options
   const { hasDemo = true, ports = {}, databaseName, smtpUrl, apiEnv = {} } = options
   mkdirSync(folder, { recursive: true })
-  const database = await openDatabase({ cluster, home, hasDemo, accountsFile, name: databaseName })
-
-  const startMail = () =>
-    mailService({ folder, wished: { smtp: ports.smtp, web: ports.mailbox }, watchdog, onDeath })
-  const mail = smtpUrl ? undefined : await step('Starting the mailbox', startMail)
-  if (mail) undo.push(mail.stop)
+  const startMail = async () => {
+    const wished = { smtp: ports.smtp, web: ports.mailbox }
+    const mail = await step('Starting the mailbox', () => mailService({ folder, wished, watchdog, onDeath }))
+    undo.push(mail.stop)
+    return mail
+  }
+  const [database, mail] = await together([
+    openDatabase({ cluster, home, name: databaseName }),
+    smtpUrl ? undefined : startMail(),
+  ])
 
   const port = await freePort(...(ports.web ?? []))
   const url = `http://127.0.0.1:${port}`
+  const env = {
+    DATABASE_URL: database.appUrl,
+    OWNER_DATABASE_URL: undefined,
+    SMTP_URL: smtpUrl ?? mail.smtpUrl,
+    PUBLIC_URL: url,
+    SESSION_SECRET: keptSecret(home, 'session-secret'),
+    ...apiEnv,
+  }
+  if (hasDemo) await ensureDemo({ cluster, home, database, accountsFile, env })
   const api = await step('Starting the application', () =>
-    apiService({
-      folder,
-      port,
-      env: {
-        DATABASE_URL: database.appUrl,
-        SMTP_URL: smtpUrl ?? mail.smtpUrl,
-        PUBLIC_URL: url,
-        SESSION_SECRET: keptSecret(home, 'session-secret'),
-        OWNER_DATABASE_URL: undefined,
-        ...apiEnv,
-      },
-      watchdog,
-      onDeath,
-    }),
+    apiService({ folder, port, env, watchdog, onDeath }),
   )
   undo.push(api.stop)
 

@@ -1,5 +1,6 @@
 import { spawn } from 'node:child_process'
 import { readFileSync, readlinkSync } from 'node:fs'
+import { createInterface } from 'node:readline'
 
 /** What /proc says of a process: its start time tells a reused number from the process that was meant. */
 export const startTimeOf = (pid) => {
@@ -73,7 +74,7 @@ export const killRunning = () => {
  * Every child is the head of a process group of its own: Ctrl-C reaches the launcher alone, which then stops
  * its children in order.
  */
-export const run = (command, args, { input, isEchoed = false, ...options } = {}) =>
+export const run = (command, args, { input, isEchoed = false, onLine, ...options } = {}) =>
   new Promise((resolve, reject) => {
     const stdin = input === undefined ? 'ignore' : 'pipe'
     const child = spawn(command, args, { ...options, detached: true, stdio: [stdin, 'pipe', 'pipe'] })
@@ -88,6 +89,7 @@ export const run = (command, args, { input, isEchoed = false, ...options } = {})
       }
     child.stdout.on('data', take(stdout, both))
     child.stderr.on('data', take(both))
+    if (onLine) createInterface({ input: child.stdout }).on('line', onLine)
     child.once('error', (error) => {
       going.delete(child)
       reject(error)

@@ -18,7 +18,7 @@ export const step = async (text, work) => {
   const begun = performance.now()
   say(`${quiet('·')} ${text} …`)
   const result = await work()
-  if (performance.now() - begun > 2000) say(quiet(`  done in ${seconds(begun)}`))
+  if (performance.now() - begun > 2000) say(quiet(`  ${text}: ${seconds(begun)}`))
   return result
 }
 
