@@ -38,7 +38,7 @@ export async function aProgramme(db: Database): Promise<{ id: string }> {
         name: `Test programme ${count}`,
         displayUnit: 'mg/L',
         ties: 'half-even',
-        nonDetect: 'less-than',
+        nonDetect: 'less-than-loq',
       })
       .returning('id')
       .executeTakeFirstOrThrow(),

@@ -93,7 +93,7 @@ function dueAt(clock: Rows<'clocks'>[number], row: AlertRecord): string | null {
   const starts: Record<string, Date | null> = {
     collected: row.collectedAt,
     received: row.receivedAt,
-    analysed: row.measuredAt,
+    analysed: row.analysedAt ?? row.measuredAt,
     released: row.releasedAt,
     notified: row.notifiedAt,
   }

@@ -1,9 +1,14 @@
 import { Injectable } from '@nestjs/common'
-import type { listAlerts, QueryOf } from '@weirlight/shared/contracts'
-import { sql } from 'kysely'
-import { idFromCursor, notFound, type Executor, type Trx } from '../../platform/index.js'
+import type { listAlerts, PositionLimit, QueryOf } from '@weirlight/shared/contracts'
+import { sql, type ExpressionBuilder } from 'kysely'
+import { idFromCursor, notFound, type DB, type Executor, type Trx } from '../../platform/index.js'
 
 export type AlertRecord = Awaited<ReturnType<AlertsRepository['list']>>[number]
+
+/** when the last reading behind the result was taken: “analysed”, for the clocks of laws */
+const lastRead = sql<Date | null>`(select max(r.read_at) from position_readings r
+  where r.batch_id = results.batch_id and r.position_id = results.position_id)`.as('analysedAt')
+const TO_CLIENT = sql<boolean>`key like 'alert:' || alerts.id || ':client:%'`
 
 /** A client reaches its own rows; for everyone else `clientId` is null. */
 @Injectable()
@@ -17,7 +22,7 @@ export class AlertsRepository {
       .innerJoin('samplingPoints', 'samplingPoints.id', 'results.samplingPointId')
       .leftJoin('users as answerer', 'answerer.id', 'alerts.acknowledgedBy')
       .leftJoin('users as closer', 'closer.id', 'alerts.closedBy')
-      .select([
+      .select((eb) => [
         'alerts.id',
         'alerts.number',
         'alerts.state',
@@ -46,11 +51,11 @@ export class AlertsRepository {
         'results.reportedText',
         'results.uncertaintyText',
         'results.unit',
-        'results.limitId',
-        'results.limitSnapshot',
+        eb.fn.coalesce('alerts.limitSnapshot', 'results.limitSnapshot').as('limitSnapshot'),
         'results.collectedAt',
         'results.measuredAt',
         'results.releasedAt',
+        lastRead,
         'answerer.name as answererName',
         'closer.name as closerName',
       ])
@@ -86,16 +91,14 @@ export class AlertsRepository {
     return row
   }
 
-  /** Released results of a batch that lie above a limit which raises alerts, and have none yet. */
+  /** Released results above a limit, without an alert yet. */
   async toRaise(trx: Trx, resultIds: readonly string[]) {
     if (resultIds.length === 0) return []
     return trx
       .selectFrom('results')
-      .innerJoin('limits', 'limits.id', 'results.limitId')
-      .select(['results.id', 'results.clientId'])
+      .select(['results.id', 'results.clientId', 'results.limitSnapshot', 'results.inputs'])
       .where('results.id', 'in', [...resultIds])
       .where('results.verdict', 'in', ['above', 'conditional-above'])
-      .where('limits.raisesAlert', '=', true)
       .where((eb) =>
         eb.not(
           eb.exists(
@@ -107,10 +110,28 @@ export class AlertsRepository {
       .execute()
   }
 
-  async insert(trx: Trx, row: { clientId: string; resultId: string }): Promise<string> {
+  /** Which of these limits raise alerts. */
+  async raising(db: Executor, limitIds: readonly string[]): Promise<Set<string>> {
+    if (limitIds.length === 0) return new Set()
+    const rows = await db
+      .selectFrom('limits')
+      .select('id')
+      .where('id', 'in', [...limitIds])
+      .where('raisesAlert', '=', true)
+      .execute()
+    return new Set(rows.map(({ id }) => id))
+  }
+
+  async insert(trx: Trx, row: { clientId: string; resultId: string; limit: PositionLimit }): Promise<string> {
+    const { limit, ...columns } = row
     const { id } = await trx
       .insertInto('alerts')
-      .values({ ...row, number: sql<string>`next_number('A', 'alert_numbers', 4)` })
+      .values({
+        ...columns,
+        limitId: limit.id,
+        limitSnapshot: JSON.stringify(limit),
+        number: sql<string>`next_number('A', 'alert_numbers', 4)`,
+      })
       .returning('id')
       .executeTakeFirstOrThrow()
     return id
@@ -175,26 +196,39 @@ export class AlertsRepository {
       .execute()
   }
 
-  /** Raised, and a message about it has left: the listener died before it could say so. */
+  /** Raised, and a message to the client has left: the listener died before it could say so. */
   async leftUnsaid(db: Executor): Promise<string[]> {
     const rows = await db
       .selectFrom('alerts')
       .select('alerts.id')
       .where('alerts.state', '=', 'raised')
-      .where((eb) =>
-        eb.exists(
-          eb
-            .selectFrom('mailMessages')
-            .where('mailMessages.aboutKind', '=', 'alert')
-            .whereRef('mailMessages.aboutId', '=', 'alerts.id')
-            .where('mailMessages.state', '=', 'sent')
-            .select('mailMessages.id'),
-        ),
-      )
+      .where(this.clientWasMailed)
       .limit(100)
       .execute()
     return rows.map((row) => row.id)
   }
+
+  /** The laboratory's own copies tell the client nothing. */
+  async isClientMailed(db: Executor, id: string): Promise<boolean> {
+    const row = await db
+      .selectFrom('alerts')
+      .select('alerts.id')
+      .where('alerts.id', '=', id)
+      .where(this.clientWasMailed)
+      .executeTakeFirst()
+    return row !== undefined
+  }
+
+  private readonly clientWasMailed = (eb: ExpressionBuilder<DB, 'alerts'>) =>
+    eb.exists(
+      eb
+        .selectFrom('mailMessages')
+        .where('mailMessages.aboutKind', '=', 'alert')
+        .whereRef('mailMessages.aboutId', '=', 'alerts.id')
+        .where('mailMessages.state', '=', 'sent')
+        .where(TO_CLIENT)
+        .select('mailMessages.id'),
+    )
 
   async recipients(db: Executor, clientId: string) {
     const contacts = await db

@@ -5,6 +5,7 @@ import type {
   BodyOf,
   closeAlert,
   listAlerts,
+  PositionLimit,
   QueryOf,
 } from '@weirlight/shared/contracts'
 import { paths } from '@weirlight/shared/paths'
@@ -26,7 +27,7 @@ import {
   type Trx,
 } from '../../platform/index.js'
 import { LaboratoryService } from '../laboratory/index.js'
-import { batchReleased } from '../results/index.js'
+import { batchReleased, recompute, type ResultInputs } from '../results/index.js'
 import { toAlertRow, toAlertView } from './alert-view.js'
 import { AlertsRepository } from './alerts.repository.js'
 import { sweepAlerts } from './jobs/alerts.jobs.js'
@@ -60,12 +61,34 @@ export class AlertsService implements OnModuleInit {
 
   @HandlesEvent(batchReleased)
   async raise(trx: Trx, { resultIds }: { resultIds: string[] }): Promise<void> {
-    for (const result of await this.alerts.toRaise(trx, resultIds)) {
-      const id = await this.alerts.insert(trx, { clientId: result.clientId, resultId: result.id })
+    for (const { clientId, resultId, limit } of await this.findings(trx, resultIds)) {
+      const id = await this.alerts.insert(trx, { clientId, resultId, limit })
       await this.tell(trx, id)
       // the demonstration's past keeps its messages as sent: nothing will come back to say so
       if (this.clock.pinnedAt) await this.notify(trx, id)
     }
+  }
+
+  /** Each result above a limit that raises alerts, with that limit: it may be another than the one reported against. */
+  private async findings(
+    trx: Trx,
+    resultIds: string[],
+  ): Promise<{ clientId: string; resultId: string; limit: PositionLimit }[]> {
+    const results = (await this.alerts.toRaise(trx, resultIds)).map((row) => ({
+      ...row,
+      inputs: row.inputs as unknown as ResultInputs,
+      shown: row.limitSnapshot as unknown as PositionLimit | null,
+    }))
+    const raising = await this.alerts.raising(trx, [
+      ...new Set(results.flatMap(({ inputs }) => inputs.limits.map(({ id }) => id))),
+    ])
+    return results.flatMap(({ id, clientId, inputs, shown }) => {
+      if (shown && raising.has(shown.id)) return [{ clientId, resultId: id, limit: shown }]
+      const limits = inputs.limits.filter((limit) => raising.has(limit.id))
+      const { verdict, limit } = recompute({ ...inputs, limits })
+      const isAbove = verdict === 'above' || verdict === 'conditional-above'
+      return isAbove && limit ? [{ clientId, resultId: id, limit }] : []
+    })
   }
 
   async acknowledge(actor: Actor, id: string, body: BodyOf<typeof acknowledgeAlert>): Promise<AlertView> {
@@ -117,7 +140,9 @@ export class AlertsService implements OnModuleInit {
   }
 
   private async markNotified(id: string): Promise<void> {
-    await this.db.transaction(SYSTEM, 'alert.notify', null, (trx) => this.notify(trx, id))
+    await this.db.transaction(SYSTEM, 'alert.notify', null, async (trx) => {
+      if (await this.alerts.isClientMailed(trx, id)) await this.notify(trx, id)
+    })
   }
 
   private async notify(trx: Trx, id: string): Promise<void> {

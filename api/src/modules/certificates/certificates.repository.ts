@@ -305,16 +305,20 @@ export class CertificatesRepository {
       .innerJoin('methods', 'methods.id', 'results.methodId')
       .innerJoin('batches', 'batches.id', 'results.batchId')
       .innerJoin('calibrations', 'calibrations.id', 'results.calibrationId')
-      .leftJoin('users as analyst', 'analyst.id', 'batches.submittedBy')
       .leftJoin('users as releaser', 'releaser.id', 'results.releasedBy')
       .select([
         'results.id',
+        sql<Date | null>`(select max(r.read_at) from position_readings r
+          where r.batch_id = results.batch_id and r.position_id = results.position_id)`.as('readAt'),
         'methods.code',
         'methods.edition',
         'methods.definition',
         'batches.number as batchNumber',
         'calibrations.number as calibrationNumber',
-        'analyst.name as analystName',
+        sql<
+          string | null
+        >`(select string_agg(distinct u.name, ', ') from position_readings r join users u on u.id = r.read_by
+          where r.batch_id = results.batch_id and r.position_id = results.position_id)`.as('analystName'),
         'releaser.name as releaserName',
         'releaser.role as releaserRole',
       ])

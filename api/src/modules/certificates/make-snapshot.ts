@@ -6,11 +6,12 @@ import {
   type MethodDefinition,
   type PositionLimit,
 } from '@weirlight/shared/contracts'
-import { convertUnit, ENGINE_VERSION } from '@weirlight/shared/assay'
+import { convertUnit } from '@weirlight/shared/assay'
 import { paths } from '@weirlight/shared/paths'
 import { ROLE_NAMES, type Role } from '@weirlight/shared/permissions'
 import { CAUTION, toResultRow, type ResultInputs, type ResultRecord } from '../results/index.js'
 import type { CertificatesRepository } from './certificates.repository.js'
+import { changesBetween } from './changes-between.js'
 
 type Facts = Awaited<ReturnType<CertificatesRepository['facts']>>
 type ResultFacts = Awaited<ReturnType<CertificatesRepository['resultFacts']>>[number]
@@ -61,17 +62,21 @@ export function makeSnapshot(given: ToSnapshot): CertificateSnapshot {
   const { facts, laboratory } = given
   const byId = new Map(given.resultFacts.map((row) => [row.id, row]))
   const lines = given.results.map((result) => toLine({ result, more: byId.get(result.id), facts }))
-  const last = [...given.results].sort((a, b) => time(b.releasedAt) - time(a.releasedAt))[0]
-  const released = last ? byId.get(last.id) : undefined
-  const analysed = lines.map((line) => line.analysedAt).sort()
-  return certificateSnapshot.parse({
+  const inOrder = [...given.results].sort((a, b) => time(a.releasedAt) - time(b.releasedAt))
+  const last = inOrder.at(-1)
+  const releasers = inOrder.flatMap((row) => byId.get(row.id) ?? [])
+  const names = together(releasers.map((row) => row.releaserName ?? ''))
+  const roles = together(
+    releasers.map((row) => (row.releaserRole ? ROLE_NAMES[row.releaserRole as Role] : '')),
+  )
+  const snapshot = certificateSnapshot.parse({
     number: given.number,
     title: 'Certificate of analysis',
     issuedAt: given.issuedAt.toISOString(),
     timeZone: laboratory.timeZone,
     replaces: given.replaces?.number ?? null,
     replacementReason: given.reason,
-    changes: given.replaces ? changesBetween(given.replaces.snapshot, { lines, facts }) : [],
+    changes: [],
     laboratory: {
       name: laboratory.name,
       address: laboratory.address,
@@ -101,18 +106,21 @@ export function makeSnapshot(given: ToSnapshot): CertificateSnapshot {
       qualification: facts.acceptanceReason,
     },
     results: lines,
-    notes: notesFor({ lines, facts, from: analysed[0], to: analysed.at(-1), timeZone: laboratory.timeZone }),
-    reviewedBy: released?.releaserName ?? '',
-    releasedBy: released?.releaserName ?? '',
-    releasedByRole: released?.releaserRole ? ROLE_NAMES[released.releaserRole as Role] : '',
+    notes: notesFor({ lines, facts }),
+    reviewedBy: names,
+    releasedBy: names,
+    releasedByRole: roles,
     releasedAt: (last?.releasedAt ?? given.issuedAt).toISOString(),
     verificationCode: given.verificationCode,
     checkUrl: new URL(paths.checkCode(given.verificationCode), given.publicUrl).href,
     caution: CAUTION,
-    engineVersion: ENGINE_VERSION,
+    engineVersion: together(given.results.map((row) => row.engineVersion)),
   })
+  const { replaces } = given
+  return replaces ? { ...snapshot, changes: changesBetween(replaces.snapshot, snapshot) } : snapshot
 }
 
+const together = (words: readonly string[]) => [...new Set(words.filter(Boolean))].join(', ')
 const time = (at: Date | null) => at?.getTime() ?? 0
 
 function toLine({
@@ -150,7 +158,7 @@ function toLine({
     decisionRule: limit ? (RULE_WORDS[limit.rule] ?? limit.rule) : '',
     verdict: row.verdict,
     flags: row.flags.map((flag) => FLAG_WORDS[flag] ?? flag),
-    analysedAt: row.measuredAt,
+    analysedAt: more?.readAt?.toISOString() ?? row.measuredAt,
     analyst: more?.analystName ?? '',
     approval: approvalOf({ definition, facts, row }),
     batch: more?.batchNumber ?? row.batchNumber,
@@ -183,14 +191,7 @@ function approvalOf(given: {
   )
 }
 
-function notesFor(given: {
-  lines: readonly Line[]
-  facts: Facts
-  from: string | undefined
-  to: string | undefined
-  timeZone: string
-}): string[] {
-  const { lines, facts } = given
+function notesFor({ lines, facts }: { lines: readonly Line[]; facts: Facts }): string[] {
   const rules = [
     ...new Set(lines.filter((line) => line.decisionRule !== '').map((line) => line.decisionRule)),
   ]
@@ -213,29 +214,4 @@ function notesFor(given: {
     ...(facts.clientConsent === '' ? [] : [`The client asked in writing to proceed: ${facts.clientConsent}`]),
     ...lines.flatMap((line) => line.flags.map((flag) => `${line.determination}: ${flag}.`)),
   ]
-}
-
-function changesBetween(
-  old: CertificateSnapshot,
-  now: { lines: readonly Line[]; facts: Facts },
-): CertificateSnapshot['changes'] {
-  const changes: CertificateSnapshot['changes'] = []
-  const note = (what: string, was: string, is: string) => {
-    if (was !== is) changes.push({ what, was: was || '–', is: is || '–' })
-  }
-  note('Collected', old.sample.collectedAt, now.facts.collectedAt.toISOString())
-  note('Collected by', old.sample.collectedBy, now.facts.collectedBy)
-  note('Preservation', old.sample.preservation, now.facts.preservation)
-  note('Condition', old.sample.condition, now.facts.condition)
-  note('Client', old.client.name, now.facts.clientName)
-  const names = new Set([...old.results, ...now.lines].map((line) => line.determination))
-  const shown = (line: Line | undefined) =>
-    line
-      ? `${line.text}${line.uncertaintyText ? ` ± ${line.uncertaintyText}` : ''} ${line.unit}, ${line.statement}`
-      : ''
-  for (const name of names) {
-    const is = (line: Line) => line.determination === name
-    note(name, shown(old.results.find(is)), shown(now.lines.find(is)))
-  }
-  return changes
 }

@@ -33,7 +33,7 @@ export class ControlChartsRepository {
         p.expected, p.dilution, r.rules, p.reporting, max(d.read_at) as read_at,
         array_agg(d.absorbance_text::text order by d.replicate) as absorbances
       from runs r join positions p on p.batch_id = r.id
-      join position_readings d on d.position_id = p.id
+      join position_readings d on d.batch_id = r.id and d.position_id = p.id
         and not exists (select from position_readings later where later.supersedes_id = d.id)
       where p.kind = ${given.kind} or (${given.kind} = 'duplicate' and p.kind = 'sample')
       group by r.id, r.number, r.rules, p.id

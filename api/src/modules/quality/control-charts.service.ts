@@ -77,20 +77,18 @@ export class ControlChartsService {
 
   private async slopes(methodId: string): Promise<Point[]> {
     const rows = await this.charts.slopes(this.db.read, methodId)
-    return rows
-      .reverse()
-      .flatMap((row) =>
-        row.signedAt === null
-          ? []
-          : [
-              {
-                at: row.signedAt,
-                value: row.slope / Number(row.cellPathCm),
-                batchId: null,
-                label: `${row.number}, ${row.instrumentName}`,
-              },
-            ],
-      )
+    return rows.reverse().flatMap((row) =>
+      row.signedAt === null
+        ? []
+        : [
+            {
+              at: row.signedAt,
+              value: row.slope / Number(row.cellPathCm),
+              batchId: null,
+              label: `${row.number}, ${row.instrumentName}`,
+            },
+          ],
+    )
   }
 
   private async values(methodId: string, kind: Exclude<Kind, 'slope'>): Promise<Point[]> {

@@ -5,7 +5,7 @@ import { showTime } from '../../platform/index.js'
 import { toResultRow } from './result-row.js'
 import type { ResultRecord } from './results.repository.js'
 import type { StoryLot, StoryRepository } from './story.repository.js'
-import type { ResultInputs } from './story.service.js'
+import type { ResultInputs } from './result-inputs.js'
 
 type Rows<K extends keyof StoryRepository> = Awaited<ReturnType<StoryRepository[K]>>
 type Change = StoryView['changes'][number]

@@ -19,7 +19,7 @@ export interface StoryLot {
 /** Everything that stands behind one result; each part one query. */
 @Injectable()
 export class StoryRepository {
-  async readings(db: Executor, positionId: string) {
+  async readings(db: Executor, { batchId, positionId }: { batchId: string; positionId: string }) {
     return db
       .selectFrom('positionReadings as reading')
       .innerJoin('users', 'users.id', 'reading.readBy')
@@ -37,6 +37,7 @@ export class StoryRepository {
         'later.reason as laterReason',
         'later.readAt as laterAt',
       ])
+      .where('reading.batchId', '=', batchId)
       .where('reading.positionId', '=', positionId)
       .orderBy('reading.replicate')
       .orderBy('reading.id')

@@ -1,26 +1,14 @@
 import { Injectable } from '@nestjs/common'
 import { ENGINE_VERSION } from '@weirlight/shared/assay'
-import type { AssessmentRules, PositionLimit, ReportingRules, StoryView } from '@weirlight/shared/contracts'
-import type { MethodDefinition } from '@weirlight/shared/contracts'
+import type { MethodDefinition, StoryView } from '@weirlight/shared/contracts'
 import { assessPosition, type StoredFit } from '@weirlight/shared/worksheet'
 import { Database } from '../../platform/index.js'
 import { LaboratoryService } from '../laboratory/index.js'
+import { CAUTION, type ResultInputs } from './result-inputs.js'
 import { toResultRow } from './result-row.js'
 import { ResultsService } from './results.service.js'
 import { changesOf, linesOf, standardsOf } from './story-lines.js'
 import { StoryRepository } from './story.repository.js'
-
-/** What was frozen when the result was stored. */
-export interface ResultInputs {
-  readings: { id: string; replicate: number; absorbance: string }[]
-  dilution: string
-  rules: AssessmentRules
-  limits: PositionLimit[]
-  reporting: ReportingRules
-}
-
-export const CAUTION =
-  'This is a laboratory finding about one sample. It is not a determination of compliance or of safety; the primacy agency decides under its current rules.'
 
 /** Pick one number: everything behind it, with the value recomputed by the code that runs now. */
 @Injectable()
@@ -48,7 +36,7 @@ export class StoryService {
       edits,
     ] = await Promise.all([
       this.laboratory.get(db),
-      this.story.readings(db, result.positionId),
+      this.story.readings(db, { batchId: result.batchId, positionId: result.positionId }),
       this.story.position(db, result.positionId),
       this.story.calibration(db, result.calibrationId),
       this.story.standards(db, result.calibrationId),

@@ -153,7 +153,7 @@ export function alertLines(
     title: `Alert ${row.number}, ${ANALYTE_NAMES[row.analyte as keyof typeof ANALYTE_NAMES]} ${row.reportedText} ${row.unit.replace('ug', 'µg')}, ${row.pointName}`,
     detail:
       row.state === 'raised'
-        ? `${row.clientName}. Not mailed yet.`
+        ? `${row.clientName}. No contact of the client has been mailed yet.`
         : `${row.clientName}. Mailed, not answered yet.`,
     action: 'Open alert',
     to: given.to(row.id),

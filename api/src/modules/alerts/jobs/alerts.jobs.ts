@@ -6,4 +6,5 @@ export const sweepAlerts = defineJob({
   data: noData,
   retryLimit: 0,
   schedule: '*/5 * * * *',
+  runsAtStart: true,
 })

@@ -1,5 +1,5 @@
 import { determinationName, showUnit, type AlertView } from '@weirlight/shared/contracts'
-import { showTime } from '../../../platform/index.js'
+import { oneLine, showTime } from '../../../platform/index.js'
 
 export interface AlertMail {
   alert: AlertView
@@ -24,7 +24,9 @@ export function alertMail({ alert, timeZone, laboratory, link }: AlertMail): {
           .map((one) => `${one.text} on ${showTime(new Date(one.at), timeZone).slice(0, 10)}`)
           .join('; ')
   return {
-    subject: `Alert ${alert.number}: ${what(alert)} at ${alert.pointName}, above ${alert.limitValue} ${showUnit(alert.limitUnit)}`,
+    subject: oneLine(
+      `Alert ${alert.number}: ${what(alert)} at ${alert.pointName}, above ${alert.limitValue} ${showUnit(alert.limitUnit)}`,
+    ),
     text: `A released result lies above a limit of your programme.
 
 Alert      ${alert.number}

@@ -81,7 +81,7 @@ export function certificateDocument(snapshot: CertificateSnapshot): DocumentDefi
         ],
         [
           'Analysts',
-          [...new Set(snapshot.results.map((line) => line.analyst))].join(', '),
+          [...new Set(snapshot.results.flatMap((line) => line.analyst.split(', ')))].join(', '),
           'Calculated by',
           `engine ${snapshot.engineVersion}`,
         ],

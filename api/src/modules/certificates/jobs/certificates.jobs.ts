@@ -12,4 +12,5 @@ export const sweepCertificates = defineJob({
   data: noData,
   retryLimit: 0,
   schedule: '*/2 * * * *',
+  runsAtStart: true,
 })

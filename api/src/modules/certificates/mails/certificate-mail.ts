@@ -1,5 +1,5 @@
 import type { CertificateSnapshot } from '@weirlight/shared/contracts'
-import { showTime } from '../../../platform/index.js'
+import { oneLine, showTime } from '../../../platform/index.js'
 
 export interface CertificateMail {
   snapshot: CertificateSnapshot
@@ -19,7 +19,7 @@ export function certificateMail({ snapshot, link }: CertificateMail): { subject:
     ? `It replaces ${snapshot.replaces}, which is no longer valid. Reason: ${snapshot.replacementReason}\n\n`
     : ''
   return {
-    subject: `Certificate of analysis ${snapshot.number}, sample ${sample.number}, ${sample.point}`,
+    subject: oneLine(`Certificate of analysis ${snapshot.number}, sample ${sample.number}, ${sample.point}`),
     text: `Certificate of analysis ${snapshot.number} is attached.
 
 Utility  ${snapshot.client.name}
