@@ -9,7 +9,7 @@ export function SheetStrips({ batch, sheet }: { batch: BatchView; sheet: RunShee
   const { clock } = useLaboratoryTime()
   const failed = sheet.queue.entries().filter((each) => each.state === 'failed')
   return (
-    <>
+    <div className="stuck">
       {batch.returnedReason !== '' && <Strip title="Sent back">{batch.returnedReason}</Strip>}
       {sheet.queue.isOffline && (
         <Strip title="No connection" isAlert>
@@ -72,6 +72,6 @@ export function SheetStrips({ batch, sheet }: { batch: BatchView; sheet: RunShee
           {sentence}
         </Strip>
       ))}
-    </>
+    </div>
   )
 }

@@ -63,13 +63,20 @@ function LineBox({ stored }: { stored: StoredFit }) {
     <Box title={curvature === undefined ? 'The line' : 'The curve'}>
       <KeyValues
         items={[
-          { term: 'Slope, A per mg/L', detail: withError(stored.slope, stored.slopeError) },
+          { term: 'Slope, A per mg/L', detail: <Exact value={stored.slope} error={stored.slopeError} /> },
           curvature !== undefined && {
             term: 'Curvature, A per (mg/L)²',
-            detail: withError(curvature, curvatureError ?? 0),
+            detail: <Exact value={curvature} error={curvatureError ?? 0} />,
           },
-          { term: 'Intercept, A', detail: withError(stored.intercept, stored.interceptError) },
-          { term: 'Residual sd, A', detail: significant(stored.residualStandardDeviation, 3) },
+          { term: 'Intercept, A', detail: <Exact value={stored.intercept} error={stored.interceptError} /> },
+          {
+            term: 'Residual sd, A',
+            detail: (
+              <span title={`${stored.residualStandardDeviation}`}>
+                {significant(stored.residualStandardDeviation, 3)}
+              </span>
+            ),
+          },
           { term: 'r', detail: decimals(stored.correlation, 6) },
           { term: 'r²', detail: decimals(stored.rSquared, 6) },
           {
@@ -91,4 +98,9 @@ function LineBox({ stored }: { stored: StoredFit }) {
       <p className="note">Limits by DIN 32645 from the curve, engine {stored.engineVersion}.</p>
     </Box>
   )
+}
+
+/** A value with its standard error; both unrounded when pointed at. */
+function Exact({ value, error }: { value: number; error: number }) {
+  return <span title={`${value} ± ${error}`}>{withError(value, error)}</span>
 }

@@ -57,6 +57,12 @@ export function CalibrationRecord({ view, method }: { view: CalibrationView; met
             ' The technician starts over from a copy; this one stays in the record.'}
         </Strip>
       )}
+      {view.endedReason !== '' && <Strip title="Taken out of force">{view.endedReason}</Strip>}
+      {view.justification !== '' && (
+        <Strip tone="quiet" title="Remark of the signer">
+          {view.justification}
+        </Strip>
+      )}
       {view.replacedBy && (
         <Strip tone="quiet" title="Replaced">
           By <Link to={paths.calibration(view.replacedBy.id)}>{view.replacedBy.number}</Link>.

@@ -7,7 +7,7 @@ import {
 import { LIMITS } from '@weirlight/shared/limits'
 import { STATE_MARKS } from '@weirlight/shared/states'
 import { Button } from 'antd'
-import { useMemo, useState } from 'react'
+import { useEffect, useMemo, useState } from 'react'
 import { paths, ProblemError, useCall, useLaboratoryTime, useNotice } from '../../../lib'
 import { useIsNarrow } from '../../../lib/use-is-narrow'
 import { Bar, Columns, MarginPage, StatusTag } from '../../../ui'
@@ -48,6 +48,9 @@ export function CalibrationWorkbench({ view, method }: { view: CalibrationView; 
     invalidates: [getCalibration, listCalibrations],
     onDone: () => notice.done(`${view.number} submitted for signature.`),
   })
+  const { reset } = submit
+  // what the server said of an earlier state of the sheet no longer stands
+  useEffect(() => reset(), [draft, reset])
   const live = useMemo(() => assessDraft(withTyped(draft, typed), method), [draft, typed, method])
   const cells = useCellStates({ sheet, submitProblem: submit.error })
 
@@ -224,7 +227,7 @@ function notSaved(): ProblemError {
     code: 'not-allowed-now',
     status: 0,
     title: 'Not saved',
-    detail: 'The sheet is not saved yet: mend or fill in what is marked on it, then submit.',
+    detail: 'The sheet is not saved yet: see what is marked on it or said above it, then submit.',
   })
 }
 

@@ -28,7 +28,7 @@ export function SheetTrouble({ sheet, homeless }: SheetTroubleProps) {
   const { at } = useLaboratoryTime()
   const { problem, status, clashes } = sheet
   return (
-    <>
+    <div className="stuck">
       {status === 'stale' && problem && (
         <Strip
           tone="above"
@@ -79,6 +79,6 @@ export function SheetTrouble({ sheet, homeless }: SheetTroubleProps) {
           </ul>
         </Strip>
       )}
-    </>
+    </div>
   )
 }

@@ -20,7 +20,7 @@ import {
   type DraftStandard,
 } from '../draft/calibration-draft'
 import { lotChoices } from '../draft/lots'
-import { decimals, signedPercent } from '../draft/number-texts'
+import { decimals, signedPercent, trueMinus } from '../draft/number-texts'
 import { ChangeReason } from './change-reason'
 import { ChoiceSelect } from './choice-select'
 
@@ -190,7 +190,7 @@ function useColumns(props: StandardsGridProps): RunGridColumn<DraftStandard>[] {
       title: 'Read back',
       unit: 'mg/L',
       isNumber: true,
-      text: (row) => decimals(backOf(row)?.concentration, 3).replace('-', '−'),
+      text: (row) => trueMinus(decimals(backOf(row)?.concentration, 3)),
       wrap: (row, aligned) =>
         row.leftOutReason ? (
           <span className="is-left-out" title={`Left out: ${row.leftOutReason}`}>

@@ -3,7 +3,7 @@ import { useLaboratoryTime } from '../../../lib'
 import { DataTable, type Column } from '../../../ui'
 import { Tint } from '../../../ui/tint'
 import { serverKey, type DraftAssessment } from '../draft/calibration-draft'
-import { decimals, signedPercent } from '../draft/number-texts'
+import { decimals, signedPercent, trueMinus } from '../draft/number-texts'
 
 type Standard = CalibrationView['standards'][number]
 
@@ -59,7 +59,7 @@ export function StandardsTable({ view, live, definition }: StandardsTableProps) 
       title: 'Read back',
       unit: 'mg/L',
       kind: 'number',
-      text: (row) => decimals(backOf(row)?.concentration, 3).replace('-', '−'),
+      text: (row) => trueMinus(decimals(backOf(row)?.concentration, 3)),
     },
     { key: 'error', title: 'Error', kind: 'number', text: (row) => signedPercent(backOf(row)?.errorPercent) },
     {

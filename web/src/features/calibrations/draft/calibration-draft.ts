@@ -36,6 +36,7 @@ export const CONCENTRATION = 'concentration'
 
 /** the key of a row that the server has */
 export const serverKey = (standardId: string) => `s${standardId}`
+export const idInKey = (key: string) => /^s(\d+)$/.exec(key)?.[1] ?? null
 
 export function draftOf(view: CalibrationView, keyOf = serverKey): CalibrationDraft {
   return {
@@ -74,13 +75,16 @@ export function replicatesOf(draft: CalibrationDraft): number {
   return Math.max(1, ...draft.standards.map((standard) => standard.readings.length))
 }
 
+/** `idOf` gives the server's id of a row that it already has */
 export function bodyOf(
   draft: CalibrationDraft,
+  idOf: (key: string) => string | null = () => null,
 ): Omit<BodyInput<typeof saveCalibration>, 'version' | 'reason'> {
   return {
     ...draft,
-    standards: draft.standards.map(({ key: _, readings, ...standard }) => ({
+    standards: draft.standards.map(({ key, readings, ...standard }) => ({
       ...standard,
+      id: idOf(key),
       readings: (readings.length > 0 ? readings : ['']).map((text) => text.trim()),
     })),
   }

@@ -11,20 +11,21 @@ export function decimals(value: number | null | undefined, digits: number): stri
   return roundReported(value, { to: 'decimals', digits, ties: 'half-even' })
 }
 
+export const trueMinus = (text: string) => text.replace(/^-/, '−')
 const decimalsIn = (text: string) => /\.(\d+)$/.exec(text)?.[1]?.length ?? 0
 
 /** `0.19698 ± 0.00025`: the error to two digits, the value to the same place */
 export function withError(value: number, error: number): string {
-  if (!(error > 0)) return significant(value, 5)
+  if (!(error > 0)) return trueMinus(significant(value, 5))
   const errorText = significant(error, 2)
-  return `${decimals(value, Math.min(15, decimalsIn(errorText)))} ± ${errorText}`
+  return `${trueMinus(decimals(value, Math.min(15, decimalsIn(errorText))))} ± ${errorText}`
 }
 
 /** `+4.9 %`, with a true minus sign */
 export function signedPercent(value: number | null | undefined): string {
   const text = decimals(value, 1)
   if (text === '') return ''
-  return `${Number(text) > 0 ? '+' : ''}${text.replace('-', '−')} %`
+  return `${Number(text) > 0 ? '+' : ''}${trueMinus(text)} %`
 }
 
 /** `11,000`, for molar absorptivities */

@@ -6,12 +6,13 @@ import {
 } from '@weirlight/shared/contracts'
 import { useQueryClient } from '@tanstack/react-query'
 import { useCallback, useEffect, useMemo, useRef, useState } from 'react'
-import { call, invalidate, ProblemError, asProblem, useDraft, useLeaveWarning } from '../../../lib'
+import { call, invalidate, asProblem, type ProblemError, useDraft, useLeaveWarning } from '../../../lib'
 import { calibrationQuery } from '../api/calibration-queries'
 import {
   bodyOf,
   changedReadings,
   draftOf,
+  idInKey,
   isSameDraft,
   placeOf,
   serverKey,
@@ -49,6 +50,11 @@ export function restore(view: CalibrationView, kept: Sheet | null): { sheet: She
   const theirs = draftOf(view, (id) => kept.keys[id] ?? serverKey(id))
   const { draft, clashes } = mergeDrafts({ base: kept.base, mine: kept.draft, theirs })
   return { sheet: { ...kept, base: theirs, draft, version: view.version }, clashes }
+}
+
+function idOf(sheet: Sheet, key: string): string | null {
+  const own = Object.entries(sheet.keys).find(([, known]) => known === key)
+  return own?.[0] ?? idInKey(key)
 }
 
 /** After a save the server's rows stand in the order they were sent: each keeps its key on the page. */
@@ -106,7 +112,11 @@ export function useCalibrationDraft(view: CalibrationView) {
         const reason = reasonOf(sent)
         const answer = await call(saveCalibration, {
           params: { id: view.id },
-          body: { version: sent.version, ...bodyOf(sent.draft), ...(reason ? { reason } : {}) },
+          body: {
+            version: sent.version,
+            ...bodyOf(sent.draft, (key) => idOf(sent, key)),
+            ...(reason ? { reason } : {}),
+          },
         })
         client.setQueryData(calibrationQuery(view.id).queryKey, answer)
         void invalidate(client, [listCalibrations])

@@ -1,7 +1,7 @@
 import { useMemo } from 'react'
 import type { ProblemError } from '../../../lib'
 import type { CellState } from '../../../ui/run-grid'
-import { cellName, cellText, placeOf, type CalibrationDraft } from '../draft/calibration-draft'
+import { cellName, cellText, CONCENTRATION, placeOf, type CalibrationDraft } from '../draft/calibration-draft'
 import type { useCalibrationDraft } from './use-calibration-draft'
 
 const MARK_OF_STATUS = {
@@ -29,7 +29,8 @@ export function useCellStates(given: {
     const placed = [...(problem?.errors ?? []), ...(submitProblem?.errors ?? [])]
     for (const { path, message } of placed) {
       const cell = placeOf(path, draft)
-      if (cell) cells.set(cellName(cell.rowKey, cell.columnKey), message)
+      if (cell && !isEntry(cell.columnKey)) homeless.push(`${rowWords(draft, cell.rowKey)}: ${message}`)
+      else if (cell) cells.set(cellName(cell.rowKey, cell.columnKey), message)
       else if (path in draft && path !== 'standards') fields.set(path, message)
       else if (path !== 'reason') homeless.push(message)
     }
@@ -52,4 +53,12 @@ export function useCellStates(given: {
     fieldError: (field: keyof CalibrationDraft) => complaints.fields.get(field) ?? null,
     homeless: complaints.homeless,
   }
+}
+
+const isEntry = (columnKey: string) => columnKey === CONCENTRATION || /^\d+$/.test(columnKey)
+
+function rowWords(draft: CalibrationDraft, rowKey: string): string {
+  const row = draft.standards.find((standard) => standard.key === rowKey)
+  if (row?.role === 'second-source') return 'Second source'
+  return `Standard ${row?.concentration ?? ''} mg/L`
 }
