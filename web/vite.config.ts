@@ -19,6 +19,8 @@ export default defineConfig({
   build: {
     target: 'es2022',
     sourcemap: false,
+    // the bench reads from it what a page loads
+    manifest: true,
     // no inlined data: addresses, so that the content security policy can stay at 'self'
     assetsInlineLimit: 0,
     modulePreload: { polyfill: false },

@@ -39,3 +39,7 @@ export const SUGGESTED_WORDS: Record<SampleView['suggested'], string> = {
 /** Whether a sample still waits for the decision. */
 export const isUndecided = (sample: Pick<SampleRow, 'state'>): boolean =>
   sample.state === 'received' || sample.state === 'expected'
+
+/** A check may name a rule by its code: `Preservation: metals-in-acid`. */
+export const checkWords = (check: string): string =>
+  check.replace(/^(Preservation: )(.+)$/, (_, what: string, code: string) => what + code.replaceAll('-', ' '))

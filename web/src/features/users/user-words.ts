@@ -1,5 +1,6 @@
+import type { Role } from '@weirlight/shared/permissions'
 import type { Mark } from '../../ui'
-import type { Authorisation } from './api/user-queries'
+import type { Authorisation, UserView } from './api/user-queries'
 
 export const ACTIVITY_WORDS: Record<Authorisation['activity'], string> = {
   read: 'Measures',
@@ -27,3 +28,15 @@ export function authorisationMark(
     return { word: left === 1 ? '1 day left' : `${left} days left`, shape: 'diamond', tone: 'caution' }
   return { word: 'in force', shape: 'disc', tone: 'meets' }
 }
+
+export const ROLE_HINTS: Record<Role, string> = {
+  technician: 'Receives, calibrates and measures.',
+  'qa-manager': 'Signs calibrations, reviews and releases; issues certificates.',
+  client: 'Sees the results of one utility, and nothing of others.',
+  auditor: 'Sees everything and changes nothing.',
+  administrator: 'Looks after people, mail and the laboratory’s particulars.',
+}
+
+/** Authorisations are for work at the bench. */
+export const mayBeAuthorised = (person: Pick<UserView, 'role'>): boolean =>
+  person.role === 'technician' || person.role === 'qa-manager'

@@ -149,7 +149,7 @@ function ChangeForm({ contact, onDone }: ContactFormProps & { contact: Contact }
   return (
     <Form layout="vertical" initialValues={contact} {...form.formProps}>
       <FormProblem form={form} />
-      <p className="note">A changed address is told to the old one too.</p>
+      <p className="note dialog-words">A changed address is told to the old one too.</p>
       <ContactFields />
       <DialogFoot onCancel={onDone} isBusy={form.isBusy} actionLabel="Change it" />
     </Form>

@@ -122,7 +122,7 @@ function ChangePoint({ point, onDone }: { point: SamplingPoint; onDone: () => vo
   return (
     <Form layout="vertical" initialValues={point} {...form.formProps}>
       <FormProblem form={form} />
-      <p>
+      <p className="dialog-words">
         Code <strong>{point.code}</strong>
       </p>
       <PointFields />

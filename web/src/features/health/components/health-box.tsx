@@ -32,7 +32,7 @@ export function HealthBox() {
   if (query.isError && !query.data)
     return <Failed problem={asProblem(query.error)} retry={() => void query.refetch()} />
   return (
-    <div className="stack">
+    <div className="stack sheet-narrow">
       {query.isError && (
         <Strip tone="above" isAlert>
           The server does not answer just now; what stands below is from before.

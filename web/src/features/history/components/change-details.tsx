@@ -1,7 +1,9 @@
-import { useLaboratoryTime } from '../../../lib'
+import { Link } from 'react-router-dom'
+import { paths, useLaboratoryTime } from '../../../lib'
 import type { HistoryRow } from '../api/history-queries'
 import { operationWord } from '../words/action-words'
 import { fieldsOf, fieldWord, isEmptyValue } from '../words/field-words'
+import { thingWord } from '../words/thing-words'
 import { isLong, valueWord, type Names } from '../words/value-words'
 
 /** Old and new side by side, every field in words. */
@@ -47,6 +49,11 @@ export function ChangeDetails({ row, names }: { row: HistoryRow; names: Names })
         <span>
           Stored as {row.thing}, row {row.thingId || 'none'}
         </span>
+        {row.thingId !== '' && (
+          <Link to={`${paths.history}?thing=${row.thing}&thingId=${row.thingId}`}>
+            Everything that happened to this {thingWord(row.thing).toLowerCase()}
+          </Link>
+        )}
         {left > 0 && <span>{left === 1 ? 'One field was' : `${left} fields were`} empty.</span>}
       </div>
     </>

@@ -1,7 +1,7 @@
 import { ROLE_NAMES } from '@weirlight/shared/permissions'
-import { useId, useState } from 'react'
+import { Fragment, useId, useState } from 'react'
 import { Link } from 'react-router-dom'
-import { paths, useLaboratoryTime } from '../../../lib'
+import { useLaboratoryTime } from '../../../lib'
 import type { HistoryRow } from '../api/history-queries'
 import { actionWord } from '../words/action-words'
 import { fieldsOf, fieldWord, isEmptyValue } from '../words/field-words'
@@ -54,13 +54,7 @@ export function HistoryEntry({ row, previous, names }: HistoryEntryProps) {
         <td>
           {isSameAct ? <span className="quiet">″ {actionWord(row.action)}</span> : actionWord(row.action)}
         </td>
-        <td>
-          {to ? <Link to={to}>{what}</Link> : what}
-          <br />
-          <Link className="note" to={`${paths.history}?thing=${row.thing}&thingId=${row.thingId}`}>
-            only this {thingWord(row.thing).toLowerCase()}
-          </Link>
-        </td>
+        <td>{to ? <Link to={to}>{what}</Link> : what}</td>
         <td>
           <Summary row={row} names={names} />
         </td>
@@ -88,17 +82,31 @@ function Summary({ row, names }: { row: HistoryRow; names: Names }) {
       !(row.operation !== 'update' && isEmptyValue((row.new ?? row.old)?.[field])) &&
       !isLong(word(row.new, field)),
   )
+  const lines = shown.slice(0, LINES).map((field) => (
+    <Fragment key={field}>
+      <span className="quiet">{fieldWord(field)}:</span>{' '}
+      {row.operation === 'update' && <>{word(row.old, field) ?? 'nothing'} → </>}
+      {word(row.new ?? row.old, field) ?? 'nothing'}
+    </Fragment>
+  ))
+  const more = shown.length > LINES && <span className="note">and {shown.length - LINES} more</span>
+  if (row.operation === 'update') {
+    return (
+      <ul className="change-lines">
+        {lines.map((line, index) => (
+          <li key={index}>{line}</li>
+        ))}
+        {more && <li>{more}</li>}
+      </ul>
+    )
+  }
   return (
-    <ul className="change-lines">
-      {row.operation === 'delete' && <li className="above">removed</li>}
-      {shown.slice(0, LINES).map((field) => (
-        <li key={field}>
-          <span className="quiet">{fieldWord(field)}:</span>{' '}
-          {row.operation === 'update' && <>{word(row.old, field) ?? 'nothing'} → </>}
-          {word(row.new ?? row.old, field) ?? 'nothing'}
-        </li>
+    <>
+      {row.operation === 'delete' && <span className="above">removed · </span>}
+      {lines.map((line, index) => (
+        <Fragment key={index}>{line} · </Fragment>
       ))}
-      {shown.length > LINES && <li className="note">and {shown.length - LINES} more</li>}
-    </ul>
+      {more || 'nothing else'}
+    </>
   )
 }

@@ -80,7 +80,7 @@ function Outcome({ checked }: { checked: Checked }) {
       <StatusTag mark={checked.ok ? WHOLE : BROKEN} />
       <p>
         {checked.ok
-          ? `${checked.checked} seals over ${checked.entries} entries were computed again; every one is the same.`
+          ? `${checked.checked === 1 ? 'One seal' : `${checked.checked} seals`} over ${checked.entries} entries: computed again, and the same.`
           : `Seal ${checked.brokenAt ?? '?'} no longer fits its entries. Stop, keep everything as it is, and compare with a backup and with a head kept elsewhere.`}
       </p>
       {checked.head && (

@@ -63,15 +63,35 @@ export function fieldWord(field: string): string {
 /** Counters that change with every save and say nothing to a reader. */
 const NOISE: ReadonlySet<string> = new Set(['version'])
 
-/** Every field of an entry, those that identify the row first, counters left out. */
+/** What a reader looks for first. */
+const FIRST = [
+  'number',
+  'state',
+  'name',
+  'absorbance_text',
+  'concentration_text',
+  'reported_text',
+  'analyte',
+  'form',
+  'method_id',
+  'kind',
+  'activity',
+  'meaning',
+  'passed',
+  'position',
+  'replicate',
+  'purpose',
+  'verdict',
+]
+const placeOf = (field: string) => (FIRST.includes(field) ? FIRST.indexOf(field) : FIRST.length)
+
+/** Every field of an entry, what a reader looks for first, counters left out. */
 export function fieldsOf(entry: {
   old: Record<string, unknown> | null
   new: Record<string, unknown> | null
 }): string[] {
   const names = new Set([...Object.keys(entry.new ?? {}), ...Object.keys(entry.old ?? {})])
-  return [...names]
-    .filter((name) => !NOISE.has(name))
-    .toSorted((a, b) => Number(b === 'number') - Number(a === 'number'))
+  return [...names].filter((name) => !NOISE.has(name)).toSorted((a, b) => placeOf(a) - placeOf(b))
 }
 
 /** Fields of a new row that say nothing: empty ones. */

@@ -6,7 +6,7 @@ import { KIND_WORDS, strengthWords, usableMark } from '../material-words'
 /** A lot as it stands in lists. */
 export function materialColumns(today: string): Column<MaterialRow>[] {
   return [
-    { key: 'number', title: 'Lot', text: (row) => row.number },
+    { key: 'number', title: 'Lot', isNarrow: true, text: (row) => row.number },
     {
       key: 'name',
       title: 'Name',
@@ -19,7 +19,7 @@ export function materialColumns(today: string): Column<MaterialRow>[] {
     { key: 'usable', title: 'May be used', cell: (row) => <StatusTag mark={usableMark(row, today)} /> },
     { key: 'kind', title: 'Kind', text: (row) => KIND_WORDS[row.kind] },
     { key: 'metal', title: 'Metal', text: (row) => (row.analyte ? ANALYTE_NAMES[row.analyte] : '') },
-    { key: 'expires', title: 'Expires', text: (row) => row.expiresOn },
+    { key: 'expires', title: 'Expires', isNarrow: true, text: (row) => row.expiresOn },
     {
       key: 'from',
       title: 'Made from or by',

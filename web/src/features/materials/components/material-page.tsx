@@ -43,12 +43,12 @@ function MaterialPage({ lot }: { lot: MaterialView }) {
         },
       ]}
       notes={[
-        lot.hazards && (
+        lot.hazards !== '' && (
           <>
             <strong>Care.</strong> {lot.hazards}
           </>
         ),
-        lot.storage && `Keep: ${lot.storage}`,
+        lot.storage !== '' && `Keep: ${lot.storage}`,
       ]}
       bar={<Bar lead={<h2>{usesLead(lot)}</h2>} actions={<LotActions lot={lot} />} />}
     >

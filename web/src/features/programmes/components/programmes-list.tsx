@@ -7,7 +7,6 @@ import {
   DataTable,
   FilterBar,
   FilterSelect,
-  KeyValues,
   Loaded,
   Provenance,
   StatusTag,
@@ -65,14 +64,13 @@ function ProgrammeBox({ programme, metal }: { programme: Programme; metal: strin
   return (
     <Box title={programme.name}>
       <p className="quiet">{programme.note}</p>
-      <KeyValues
-        items={[
-          { term: 'Results shown in', detail: showUnit(programme.displayUnit) },
-          { term: 'Rounding', detail: TIES_WORDS[programme.ties] },
-          { term: 'Below detection', detail: NON_DETECT_WORDS[programme.nonDetect] ?? programme.nonDetect },
-          { term: 'Clients', detail: <Clients clients={programme.clients} /> },
-        ]}
-      />
+      <p className="programme-rules">
+        <span className="quiet">Results in</span> {showUnit(programme.displayUnit)}.{' '}
+        <span className="quiet">Rounding:</span> {TIES_WORDS[programme.ties]}.{' '}
+        <span className="quiet">Below detection:</span>{' '}
+        {NON_DETECT_WORDS[programme.nonDetect] ?? programme.nonDetect}.{' '}
+        <span className="quiet">Clients:</span> <Clients clients={programme.clients} />.
+      </p>
       <DataTable
         label={`Limits of ${programme.name}`}
         rows={limits}
@@ -110,12 +108,9 @@ const columnsOn = (day: string): Column<Limit>[] => [
     title: 'Value',
     kind: 'number',
     text: (row) => row.value,
-    wrap: (row, aligned) => (
-      <span className="strong">
-        {aligned} {showUnit(row.unit)}
-      </span>
-    ),
+    wrap: (_, aligned) => <span className="strong">{aligned}</span>,
   },
+  { key: 'unit', title: 'Unit', text: (row) => showUnit(row.unit) },
   { key: 'rule', title: 'How it is compared', text: (row) => RULE_WORDS[row.decisionRule](row.digits) },
   {
     key: 'dates',

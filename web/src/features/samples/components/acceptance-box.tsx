@@ -4,11 +4,12 @@ import { Button, Form, Input } from 'antd'
 import { useState } from 'react'
 import { useCall, useCan, useNotice } from '../../../lib'
 import { useEndpointForm } from '../../../lib/use-endpoint-form'
-import { Box, Criteria, KeyValues, StatusTag, Strip } from '../../../ui'
+import { Box, KeyValues, MarkShape, StatusTag, Strip } from '../../../ui'
 import { DialogFoot, FormDialog } from '../../../ui/form-dialog'
 import { FormProblem } from '../../../ui/form-problem'
 import { TOUCHES, type SampleView } from '../api/sample-queries'
-import { isUndecided, SUGGESTED_WORDS } from '../sample-words'
+import { checkWords, isUndecided, SUGGESTED_WORDS } from '../sample-words'
+import './samples.css'
 
 /** The checks at receipt, the verdict they lead to, and the decision: taken, or to be taken here. */
 export function AcceptanceBox({ sample }: { sample: SampleView }) {
@@ -16,13 +17,7 @@ export function AcceptanceBox({ sample }: { sample: SampleView }) {
   const undecided = isUndecided(sample)
   return (
     <Box title={undecided ? 'Acceptance: to be decided' : 'Acceptance'}>
-      <Criteria
-        items={sample.checks.map((check) => ({
-          what: check.check,
-          found: check.finding,
-          outcome: check.ok ? 'pass' : 'fail',
-        }))}
-      />
+      <Checks checks={sample.checks} />
       {undecided ? (
         <div className="box-foot">
           <p>
@@ -36,6 +31,26 @@ export function AcceptanceBox({ sample }: { sample: SampleView }) {
         <Decided sample={sample} />
       )}
     </Box>
+  )
+}
+
+/** What failed stands first. */
+function Checks({ checks }: { checks: SampleView['checks'] }) {
+  return (
+    <ul className="acceptance-checks">
+      {checks
+        .toSorted((a, b) => Number(a.ok) - Number(b.ok))
+        .map((check) => (
+          <li key={check.check}>
+            <span className={`state is-${check.ok ? 'meets' : 'above'}`}>
+              <MarkShape shape={check.ok ? 'disc' : 'triangle'} />
+              <span className="visually-hidden">{check.ok ? 'met:' : 'not met:'}</span>
+            </span>
+            <span>{checkWords(check.check)}</span>
+            <span className={check.ok ? 'quiet' : 'above'}>{check.finding}</span>
+          </li>
+        ))}
+    </ul>
   )
 }
 

@@ -46,7 +46,7 @@ export function CorrectSample({ sample, onDone }: { sample: SampleView; onDone: 
       {...form.formProps}
     >
       <FormProblem form={form} />
-      <p className="note">
+      <p className="note dialog-words">
         What stood before stays in the history. Purpose, client and point are fixed: a sample received for the
         wrong ones is rejected and received again.
       </p>

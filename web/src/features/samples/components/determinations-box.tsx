@@ -77,9 +77,14 @@ export function DeterminationsBox({ sample }: { sample: SampleView }) {
           aligned
         ) : (
           <NumberWithStory resultId={row.resultId} text={row.reportedText} unit={showUnit(row.unit ?? '')}>
-            {aligned} {showUnit(row.unit ?? '')}
+            {aligned}
           </NumberWithStory>
         ),
+    },
+    {
+      key: 'unit',
+      title: 'Unit',
+      text: (row) => (row.reportedText === null ? '' : showUnit(row.unit ?? '')),
     },
     {
       key: 'verdict',

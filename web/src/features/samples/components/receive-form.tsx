@@ -90,10 +90,10 @@ function WhatItIs() {
           required
           extra="Fixed with the receipt: it decides what is checked."
         >
-          <Radio.Group options={PURPOSES} optionType="button" />
+          <Radio.Group options={PURPOSES} optionType="button" buttonStyle="solid" />
         </Form.Item>
-        <Form.Item name="kind" label="Kind" required className="wide">
-          <Radio.Group options={KINDS} optionType="button" />
+        <Form.Item name="kind" label="Kind" required>
+          <Radio.Group options={KINDS} optionType="button" buttonStyle="solid" />
         </Form.Item>
       </div>
     </Box>
@@ -122,17 +122,17 @@ function HowItCame() {
   return (
     <Box title="How it came">
       <div className="form-grid">
-        <Form.Item name="preservation" label="Preserved with" required className="wide">
-          <Radio.Group options={PRESERVATIONS} optionType="button" />
+        <Form.Item name="preservation" label="Preserved with" required>
+          <Radio.Group options={PRESERVATIONS} optionType="button" buttonStyle="solid" />
+        </Form.Item>
+        <Form.Item name="container" label="Container" required>
+          <Radio.Group options={CONTAINERS} optionType="button" buttonStyle="solid" />
         </Form.Item>
         <Form.Item name="ph" label="pH, as read" extra="Empty when it was not measured.">
           <DecimalInput />
         </Form.Item>
         <Form.Item name="temperatureC" label="Temperature, °C" extra="Empty when it was not measured.">
           <DecimalInput />
-        </Form.Item>
-        <Form.Item name="container" label="Container" required className="wide">
-          <Radio.Group options={CONTAINERS} optionType="button" />
         </Form.Item>
         <Form.Item name="filteredInField" valuePropName="checked" className="wide">
           <Checkbox>Filtered in the field, for dissolved metal</Checkbox>

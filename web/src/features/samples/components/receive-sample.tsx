@@ -1,4 +1,5 @@
 import { useState } from 'react'
+import { useLaboratoryTime } from '../../../lib'
 import type { SampleView } from '../api/sample-queries'
 import { emptyForm, nextOfRound, type ReceiveValues } from '../receive/receive-values'
 import { ReceiveForm } from './receive-form'
@@ -11,8 +12,11 @@ interface Round {
 
 /** Bottle after bottle: the form, then the number large with what to decide, then the form again. */
 export function ReceiveSample({ clientId }: { clientId: string }) {
+  const { parse, nowText } = useLaboratoryTime()
+  // most bottles are written down as they come in; the time stands there to be changed
+  const fresh = () => ({ ...emptyForm(crypto.randomUUID()), receivedAt: parse(nowText()) ?? undefined })
   const [round, setRound] = useState<Round>(() => ({
-    values: { ...emptyForm(crypto.randomUUID()), ...(clientId === '' ? {} : { clientId }) },
+    values: { ...fresh(), ...(clientId === '' ? {} : { clientId }) },
     isNext: false,
   }))
   const [received, setReceived] = useState<{ sample: SampleView; sent: ReceiveValues } | null>(null)
@@ -25,7 +29,7 @@ export function ReceiveSample({ clientId }: { clientId: string }) {
       <ReceivedPanel
         received={received.sample}
         onNextOfRound={() => again(nextOfRound(received.sent, crypto.randomUUID()), true)}
-        onAfresh={() => again(emptyForm(crypto.randomUUID()), false)}
+        onAfresh={() => again(fresh(), false)}
       />
     )
   }

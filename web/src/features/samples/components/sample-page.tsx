@@ -84,8 +84,9 @@ function SamplePage({ sample }: { sample: SampleView }) {
         </Strip>
       )}
       <Columns side={<AsReceived sample={sample} />}>
+        {isUndecided(sample) && <AcceptanceBox sample={sample} />}
         <DeterminationsBox sample={sample} />
-        <AcceptanceBox sample={sample} />
+        {!isUndecided(sample) && <AcceptanceBox sample={sample} />}
       </Columns>
     </MarginPage>
   )

@@ -29,7 +29,7 @@ export function SampleRegister() {
   const clients = useQuery(clientsQuery)
   const client = useQuery({ ...clientQuery(filters.clientId), enabled: filters.clientId !== '' })
   const columns: Column<SampleRow>[] = [
-    { key: 'number', title: 'Sample', text: (row) => row.number },
+    { key: 'number', title: 'Sample', isNarrow: true, text: (row) => row.number },
     {
       key: 'state',
       title: 'State',
@@ -38,13 +38,14 @@ export function SampleRegister() {
     {
       key: 'holding',
       title: 'Holding time',
+      isNarrow: true,
       cell: (row) =>
         row.holding ? (
           <span title={row.holding.rule}>
             <Clock dueAt={row.holding.dueAt} soonHours={24} />
           </span>
         ) : (
-          <span className="quiet">nothing left to read</span>
+          <span className="quiet">none running</span>
         ),
     },
     {
@@ -61,12 +62,12 @@ export function SampleRegister() {
     },
     { key: 'what', title: 'Determinations', cell: (row) => <DeterminationNames of={row.determinations} /> },
     { key: 'purpose', title: 'Purpose', text: (row) => PURPOSE_WORDS[row.purpose] },
-    { key: 'collected', title: 'Collected', text: (row) => at(row.collectedAt), isSecondary: true },
     {
-      key: 'received',
-      title: 'Received',
-      text: (row) => (row.receivedAt ? at(row.receivedAt) : ''),
+      key: 'collected',
+      title: 'Collected',
+      isNarrow: true,
       isSecondary: true,
+      text: (row) => at(row.collectedAt),
     },
   ]
   return (

@@ -17,10 +17,11 @@ export function WaitingList() {
   const counts = all.data?.counts ?? query.data?.counts ?? []
   const chosen = counts.find((each) => each.methodId === filters.method)
   const columns: Column<Waiting>[] = [
-    { key: 'sample', title: 'Sample', text: (row) => row.sampleNumber },
+    { key: 'sample', title: 'Sample', isNarrow: true, text: (row) => row.sampleNumber },
     {
       key: 'clock',
       title: 'Holding time',
+      isNarrow: true,
       cell: (row) => (
         <span title={row.holding.rule}>
           <Clock dueAt={row.holding.dueAt} soonHours={24} />
@@ -40,8 +41,13 @@ export function WaitingList() {
         </>
       ),
     },
-    { key: 'collected', title: 'Collected', text: (row) => at(row.collectedAt), isSecondary: true },
-    { key: 'received', title: 'Received', text: (row) => at(row.receivedAt), isSecondary: true },
+    {
+      key: 'collected',
+      title: 'Collected',
+      isNarrow: true,
+      isSecondary: true,
+      text: (row) => at(row.collectedAt),
+    },
     {
       key: 'accepted',
       title: 'Accepted',

@@ -3,19 +3,12 @@ import { ROLE_NAMES, ROLES, type Role } from '@weirlight/shared/permissions'
 import { Form, Input } from 'antd'
 import { SelectInput } from '../../../ui'
 import { utilitiesQuery } from '../api/user-queries'
+import { ROLE_HINTS } from '../user-words'
 
 export interface AccountValues {
   name: string
   role: Role
   clientId: string | null
-}
-
-const ROLE_HINTS: Record<Role, string> = {
-  technician: 'Receives, calibrates and measures.',
-  'qa-manager': 'Signs calibrations, reviews and releases; issues certificates.',
-  client: 'Sees the results of one utility, and nothing of others.',
-  auditor: 'Sees everything and changes nothing.',
-  administrator: 'Looks after people, mail and the laboratory’s particulars.',
 }
 
 /** the body of an account; only clients belong to a utility */

@@ -77,8 +77,8 @@ export function AllAuthorisations() {
       title: 'Standing',
       cell: (row) => <StatusTag mark={authorisationMark(row, today())} />,
     },
-    { key: 'from', title: 'From', text: (row) => row.validFrom },
-    { key: 'until', title: 'Until', text: (row) => row.validUntil },
+    { key: 'from', title: 'From', isNarrow: true, text: (row) => row.validFrom },
+    { key: 'until', title: 'Until', isNarrow: true, text: (row) => row.validUntil },
     { key: 'evidence', title: 'What shows it', text: (row) => row.evidence },
   ]
   const rows = people.data && heldBy(people.data.items)
@@ -140,8 +140,8 @@ export function AuthorisationsOf({ person }: { person: UserView }) {
           title: 'Standing',
           cell: (row) => <StatusTag mark={authorisationMark(row, today())} />,
         },
-        { key: 'from', title: 'From', text: (row) => row.validFrom },
-        { key: 'until', title: 'Until', text: (row) => row.validUntil },
+        { key: 'from', title: 'From', isNarrow: true, text: (row) => row.validFrom },
+        { key: 'until', title: 'Until', isNarrow: true, text: (row) => row.validUntil },
         { key: 'evidence', title: 'What shows it', text: (row) => row.evidence },
       ]}
       rowKey={(row) => row.id}

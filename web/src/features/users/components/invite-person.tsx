@@ -23,7 +23,7 @@ export function InvitePerson({ onDone }: { onDone: () => void }) {
   return (
     <Form layout="vertical" {...form.formProps}>
       <FormProblem form={form} />
-      <p className="note">
+      <p className="note dialog-words">
         A link is mailed. With it the person chooses a passphrase; nobody else ever knows it.
       </p>
       <Form.Item name="email" label="E-mail" required>

@@ -5,6 +5,7 @@ import { useCall, useCan, useNotice, useSession } from '../../../lib'
 import { ConfirmDialog, ReasonDialog } from '../../../ui/dialogs'
 import { FormDialog } from '../../../ui/form-dialog'
 import { TOUCHES, type UserView } from '../api/user-queries'
+import { mayBeAuthorised } from '../user-words'
 import { AuthorisePerson, ChangePerson } from './person-forms'
 
 type Asked = 'change' | 'authorise' | 'disable' | 'enable' | 'reset' | 'invite'
@@ -39,7 +40,7 @@ export function PersonActions({ person }: { person: UserView }) {
           </Button>
         )
       )}
-      {person.role !== 'client' && person.status !== 'disabled' && (
+      {mayBeAuthorised(person) && person.status !== 'disabled' && (
         <Button type="primary" onClick={() => setAsked('authorise')}>
           Authorise
         </Button>

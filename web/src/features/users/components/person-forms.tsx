@@ -37,7 +37,7 @@ export function ChangePerson({ person, onDone }: PersonFormProps) {
   return (
     <Form layout="vertical" initialValues={person} {...form.formProps}>
       <FormProblem form={form} />
-      <p className="note">
+      <p className="note dialog-words">
         Another role or utility ends this person’s sessions: they sign in again with the new rights.
       </p>
       <AccountFields />

@@ -5,6 +5,7 @@ import { Link } from 'react-router-dom'
 import { paths, useCan, useLaboratoryTime } from '../../../lib'
 import { Bar, Box, Loaded, MarginPage, NotFound, StatusTag, Strip } from '../../../ui'
 import { usersQuery, type UserView } from '../api/user-queries'
+import { mayBeAuthorised, ROLE_HINTS } from '../user-words'
 import { AuthorisationsOf } from './authorisations'
 import { PersonActions } from './person-actions'
 
@@ -28,7 +29,7 @@ export function PersonById({ id }: { id: string }) {
 function PersonPage({ person }: { person: UserView }) {
   const may = useCan()
   const { at } = useLaboratoryTime()
-  const isAtTheBench = person.role !== 'client'
+  const isAtTheBench = mayBeAuthorised(person)
   return (
     <MarginPage
       title={person.name}
@@ -58,7 +59,7 @@ function PersonPage({ person }: { person: UserView }) {
       notes={['Passphrases are known to their owners alone. An account is never deleted: what it did stays.']}
       bar={
         <Bar
-          lead={isAtTheBench ? <h2>Authorisations</h2> : <h2>A client’s account</h2>}
+          lead={<h2>{isAtTheBench ? 'Authorisations' : 'What this account sees'}</h2>}
           actions={<PersonActions person={person} />}
         />
       }
@@ -73,8 +74,9 @@ function PersonPage({ person }: { person: UserView }) {
       ) : (
         <Box>
           <p>
-            This person sees the results, certificates and alerts of {person.clientName ?? 'one utility'}, and
-            nothing of others.
+            {person.role === 'client'
+              ? `The results, certificates and alerts of ${person.clientName ?? 'one utility'}, and nothing of others.`
+              : ROLE_HINTS[person.role]}
           </p>
         </Box>
       )}
