@@ -75,7 +75,6 @@ export class ResultsService {
     const newest = rows.at(-1)
     const unit = (newest?.unit ?? 'mg/L') as 'mg/L' | 'ug/L'
     const limit = newest?.limitSnapshot as unknown as PositionLimit | null | undefined
-    const shown = (value: number) => convertUnit({ value, from: 'mg/L', to: unit })
     return {
       unit,
       limit: limit
@@ -84,7 +83,7 @@ export class ResultsService {
       points: rows.map((row) => ({
         resultId: row.id,
         at: row.collectedAt.toISOString(),
-        value: shown(row.numericForCompliance ?? row.concentration),
+        value: drawnValue(row, unit),
         text: row.reportedText,
         verdict: toResultRow(row).verdict,
         nonDetect: row.reportedText.startsWith('<'),
@@ -110,6 +109,15 @@ export class ResultsService {
     const mediaType = 'application/vnd.openxmlformats-officedocument.spreadsheetml.sheet'
     return { content, mediaType, filename: `${name}.xlsx` }
   }
+}
+
+/** Where a chart draws a result: as measured, a non-detect at the limit behind its `<`, whatever a rule counts it as. */
+function drawnValue(row: ResultRecord, unit: 'mg/L' | 'ug/L'): number {
+  if (!row.reportedText.startsWith('<')) {
+    return convertUnit({ value: row.concentration, from: 'mg/L', to: unit })
+  }
+  const limit = Number(row.reportedText.slice(1))
+  return convertUnit({ value: limit, from: row.unit as 'mg/L' | 'ug/L', to: unit })
 }
 
 const EXPORT_COLUMNS = [

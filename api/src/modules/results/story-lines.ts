@@ -101,17 +101,27 @@ export function linesOf(told: Told): StoryView['lines'] {
   ]
 }
 
+/** `chromium(VI)`: the numeral keeps its capitals */
+const inSentence = (name: string) => name.charAt(0).toLowerCase() + name.slice(1)
+
+const RULE_WORDS: Record<string, string> = {
+  simple: 'compared as measured',
+  rounded: 'compared after rounding to the digits of the limit',
+  guarded: 'compared with an acceptance limit that lies below by the expanded uncertainty',
+  'four-zone': 'compared in four zones as wide as the expanded uncertainty',
+}
+
 function reported({ result, inputs }: Told): StoryView['lines'][number] {
   const row = toResultRow(result)
   const limit = result.limitSnapshot as unknown as PositionLimit | null
   const uncertainty = row.uncertaintyText === null ? '' : `, U ${row.uncertaintyText} (k = 2)`
   const finding = limit
-    ? `${row.verdict?.startsWith('conditional') ? row.verdict.replace('conditional-', 'within uncertainty, ') : row.verdict} ${limit.value} ${showUnit(limit.unit)} (${limit.name}, ${limit.source}), rule ${limit.rule}`
+    ? `${row.verdict?.startsWith('conditional') ? row.verdict.replace('conditional-', 'within uncertainty, ') : row.verdict} ${limit.value} ${showUnit(limit.unit)} (${limit.name}, ${limit.source}), ${RULE_WORDS[limit.rule] ?? limit.rule}`
     : 'no limit applies'
   return {
     heading: 'Reported',
-    main: `${row.text} ${showUnit(row.unit)} ${determinationName(row.analyte, row.form).toLowerCase()}${uncertainty}`,
-    detail: `rounded ${inputs.reporting.ties} to ${inputs.reporting.digits} significant figures; ${finding}`,
+    main: `${row.text} ${showUnit(row.unit)} ${inSentence(determinationName(row.analyte, row.form))}${uncertainty}`,
+    detail: `rounded ${inputs.reporting.ties.replaceAll('-', ' ')} to ${inputs.reporting.digits} significant figures; ${finding}`,
     to: null,
   }
 }

@@ -27,6 +27,11 @@ export function contentSecurityPolicy(nonce?: string): string {
   ].join('; ')
 }
 
+/** A PDF is shown inside the page it belongs to; nothing in it runs, and nobody else may frame it. */
+const DOCUMENT_POLICY =
+  "default-src 'none'; style-src 'unsafe-inline'; object-src 'self'; frame-ancestors 'self'"
+const DOCUMENT = /^\/api\/[^?]+\.pdf(\?|$)/
+
 export async function registerSecurity(fastify: FastifyInstance, settings: SettingsValues): Promise<void> {
   await fastify.register(helmet, {
     contentSecurityPolicy: false,
@@ -35,7 +40,8 @@ export async function registerSecurity(fastify: FastifyInstance, settings: Setti
     strictTransportSecurity: settings.isSecure,
   })
   fastify.addHook('onRequest', (request, reply, done) => {
-    void reply.header('content-security-policy', contentSecurityPolicy())
+    const policy = DOCUMENT.test(request.url) ? DOCUMENT_POLICY : contentSecurityPolicy()
+    void reply.header('content-security-policy', policy)
     void reply.header('permissions-policy', 'camera=(self), microphone=(), geolocation=()')
     void reply.header('x-request-id', String(request.id))
     if (request.url.startsWith('/api')) void reply.header('cache-control', 'no-store')

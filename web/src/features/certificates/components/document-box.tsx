@@ -26,7 +26,7 @@ export function DocumentBox({ certificate }: { certificate: CertificateView }) {
       {hasViewer && (
         <iframe
           className="document-frame"
-          src={`${href}#view=FitH`}
+          src={`${href}#toolbar=0&navpanes=0&view=FitH`}
           title={`Document of ${number}`}
           loading="lazy"
         />

@@ -29,7 +29,7 @@ export function ControlCharts() {
   const items = methods.data?.items ?? []
   const methodId = filters.methodId === '' ? (items[0]?.id ?? '') : filters.methodId
   const kind = KINDS.find((each) => each.value === filters.kind)?.value ?? 'control'
-  const chart = useQuery({ ...controlChartQuery(methodId, kind), enabled: methodId !== '' })
+  const found = useQuery({ ...controlChartQuery(methodId, kind), enabled: methodId !== '' })
   return (
     <>
       <search className="filters no-print">
@@ -61,7 +61,7 @@ export function ControlCharts() {
       {methods.isSuccess && items.length === 0 ? (
         <Empty title="No method is set up" />
       ) : (
-        <Loaded query={chart}>{(view) => <ChartOnPage chart={view} />}</Loaded>
+        <Loaded query={found}>{(view) => <ChartOnPage chart={view} />}</Loaded>
       )}
     </>
   )

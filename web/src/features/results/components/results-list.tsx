@@ -96,7 +96,11 @@ function useColumns(): Column<ResultRow>[] {
         </>
       ),
     },
-    { key: 'determination', title: 'Determination', text: determinationOf },
+    {
+      key: 'determination',
+      title: 'Determination',
+      cell: (row) => <span className="result-name">{determinationOf(row)}</span>,
+    },
     {
       key: 'text',
       title: 'Result',

@@ -1,5 +1,5 @@
 import { useQuery } from '@tanstack/react-query'
-import { Drawer } from 'antd'
+import { useEffect, useId, useRef } from 'react'
 import { Link } from 'react-router-dom'
 import { paths } from '../../../lib'
 import { Loaded, StatusTag, Strip } from '../../../ui'
@@ -15,23 +15,45 @@ import {
 } from './story-parts'
 import { TakeAway } from './take-away'
 
-/** What any reported number anywhere opens. */
+/** What any reported number anywhere opens. A dialog of the browser's own: keyboard and reader stay inside it. */
 export function StoryDrawer({ resultId, close }: { resultId: string; close: () => void }) {
   const query = useQuery(storyQuery(resultId))
-  const title = query.data ? `Behind ${withUnit(query.data.result)}` : 'What is behind this number'
+  const dialog = useRef<HTMLDialogElement>(null)
+  const titleId = useId()
+  useEffect(() => {
+    const element = dialog.current
+    element?.showModal()
+    return () => element?.close()
+  }, [])
   return (
-    <Drawer
-      open
-      onClose={close}
-      title={title}
-      size="min(760px, 100vw)"
-      classNames={{ body: 'story-drawer' }}
-      extra={<Link to={paths.result(resultId)}>Open as a page</Link>}
+    <dialog
+      ref={dialog}
+      className="story-drawer"
+      aria-labelledby={titleId}
+      onCancel={(event) => {
+        event.preventDefault()
+        close()
+      }}
+      onClick={(event) => {
+        // beside the drawer: the dialog itself is what was clicked
+        if (event.target === dialog.current) close()
+      }}
     >
-      <Loaded query={query} what="result">
-        {(story) => <StoryInDrawer story={story} />}
-      </Loaded>
-    </Drawer>
+      <div className="story-frame">
+        <header className="story-bar">
+          <h2 id={titleId}>
+            {query.data ? `Behind ${withUnit(query.data.result)}` : 'What is behind this number'}
+          </h2>
+          <Link to={paths.result(resultId)}>Open as a page</Link>
+          <button type="button" className="button" onClick={close}>
+            Close
+          </button>
+        </header>
+        <Loaded query={query} what="result">
+          {(story) => <StoryInDrawer story={story} />}
+        </Loaded>
+      </div>
+    </dialog>
   )
 }
 
