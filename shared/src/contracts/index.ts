@@ -18,6 +18,7 @@ import { todayEndpoints } from './today.js'
 import { userEndpoints } from './users.js'
 
 export * from './alerts.js'
+export * from './assessment.js'
 export * from './batches.js'
 export * from './bench.js'
 export * from './calibrations.js'

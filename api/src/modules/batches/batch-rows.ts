@@ -32,6 +32,8 @@ export interface BatchListRow {
   samples: number
   aboveLimit: number
   openFindings: number
+  /** by the laboratory's own clock, kept as data; null where none is kept */
+  reviewDueAt: Date | null
   version: number
 }
 

@@ -4,10 +4,6 @@ import { holdingAt } from '../samples/index.js'
 import type { AssessedBatch, AssessedPosition, BatchWhole } from './assess-batch.js'
 import type { BatchListRow, DilutionChangeRow, PositionRow } from './batch-rows.js'
 
-/** A submitted batch is reviewed within a day (house rule). */
-export const REVIEW_WITHIN_HOURS = 24
-const HOUR = 3_600_000
-
 export function toRow(row: BatchListRow): z.input<typeof batchRow> {
   const { openedBy, openedByName, positionsRead, openFindings, openedAt, submittedAt, releasedAt, ...plain } =
     row
@@ -19,10 +15,7 @@ export function toRow(row: BatchListRow): z.input<typeof batchRow> {
     releasedAt: releasedAt?.toISOString() ?? null,
     read: positionsRead,
     findings: openFindings,
-    reviewDueAt:
-      row.state === 'submitted' && submittedAt
-        ? new Date(submittedAt.getTime() + REVIEW_WITHIN_HOURS * HOUR).toISOString()
-        : null,
+    reviewDueAt: row.reviewDueAt?.toISOString() ?? null,
   }
 }
 

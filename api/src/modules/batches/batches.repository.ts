@@ -8,7 +8,9 @@ const ROW = sql`b.id, b.number, b.method_id, m.title as method_title, m.analyte,
   k.number as calibration_number, b.state, b.opened_by, u.name as opened_by_name, b.opened_at, b.submitted_at, b.released_at,
   (select count(*)::int from positions p where p.batch_id = b.id) as positions, b.positions_read,
   (select count(*)::int from positions p where p.batch_id = b.id and p.kind = 'sample') as samples,
-  b.above_limit, b.open_findings, b.version`
+  b.above_limit, b.open_findings, b.version,
+  case when b.state = 'submitted' then b.submitted_at + make_interval(secs => (select hours::float8 * 3600 from clocks
+    where code = 'house-review')) end as review_due_at`
 const FROM = sql`from batches b join methods m on m.id = b.method_id join calibrations k on k.id = b.calibration_id
   join users u on u.id = b.opened_by`
 

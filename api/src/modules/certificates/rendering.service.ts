@@ -65,7 +65,8 @@ export class RenderingService implements OnModuleInit {
   /** Every certificate without a document, here and now: for the loader of the demonstration's past. */
   async sweepNow(): Promise<void> {
     const ids = await this.certificates.unrendered(this.db.fresh)
-    await Promise.all(ids.map((id) => this.render({ id })))
+    // one after another: the time limit of a document runs while it waits for a thread
+    for (const id of ids) await this.render({ id })
   }
 
   @JobHandler(sweepCertificates)
