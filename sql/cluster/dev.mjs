@@ -1,5 +1,6 @@
 // npm run dev: the product on this checkout's own data, rebuilt and restarted as files change.
 
+import { watch } from 'node:fs'
 import { ensureBuilt } from './build.mjs'
 import { completeAccounts, ensureDemo, openDatabase } from './database.mjs'
 import { undoStack } from './launch.mjs'
@@ -9,7 +10,7 @@ import { inData, inRoot } from './paths.mjs'
 import { checkoutHome } from './places.mjs'
 import { freePort } from './ports.mjs'
 import { startCluster } from './postgres.mjs'
-import { startService } from './processes.mjs'
+import { run, startService } from './processes.mjs'
 import { bold, green, quiet, say, step, warn } from './say.mjs'
 import { keptSecret, mailService } from './services.mjs'
 import { runToEnd } from './signals.mjs'
@@ -26,20 +27,35 @@ const labelled = (name) => (chunk) => {
   }
 }
 
-/** What is kept running: each compiler rewrites `dist`, and node starts the API again when `dist` changes. */
+/** Compiles the API when its sources change; the compiler's own watch mode would need one more package. */
+const compileOnChange = () => {
+  const show = labelled('compile')
+  let timer
+  let isBusy = false
+  const compile = async () => {
+    if (isBusy) return soon()
+    isBusy = true
+    const answer = await run('npm', ['run', 'build', '-w', 'api'], { cwd: inRoot() })
+    isBusy = false
+    show(answer.code === 0 ? 'compiled' : answer.output)
+  }
+  const soon = () => {
+    clearTimeout(timer)
+    timer = setTimeout(() => void compile(), 200)
+  }
+  const watcher = watch(inRoot('api', 'src'), { recursive: true }, soon)
+  undo.push(() => {
+    clearTimeout(timer)
+    watcher.close()
+  })
+}
+
+/** What is kept running; node starts the API again when `dist` changes. */
 const watchers = ({ api, web, env }) => [
   {
     name: 'shared',
     args: [bin('typescript', 'bin', 'tsc'), '-p', 'tsconfig.build.json', '--watch', '--preserveWatchOutput'],
     cwd: inRoot('shared'),
-  },
-  {
-    name: 'compile',
-    args: [
-      ...[bin('@swc', 'cli', 'bin', 'swc.js'), 'src', '-d', 'dist', '--strip-leading-paths'],
-      ...['--config-file', '.swcrc', '--watch'],
-    ],
-    cwd: inRoot('api'),
   },
   {
     name: 'api',
@@ -84,6 +100,7 @@ const work = async () => {
   const url = `http://127.0.0.1:${web}`
   const env = {
     NODE_ENV: 'development',
+    LOG_LEVEL: process.env.LOG_LEVEL ?? 'warn',
     HOST: '127.0.0.1',
     DATABASE_URL: database.appUrl,
     SMTP_URL: mail.smtpUrl,
@@ -104,6 +121,7 @@ const work = async () => {
     watchdog.watch(service)
     undo.push(service.stop)
   }
+  compileOnChange()
   lock.note({ url })
   completeAccounts(accountsFile, { url, mailUrl: mail.url, databaseUrl: database.appUrl })
   say(`\n${green('Watching')}  ${bold(url)}   mailbox ${mail.url}   accounts in .data/demo-accounts.json\n`)
