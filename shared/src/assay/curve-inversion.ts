@@ -7,8 +7,7 @@ export interface CentredCurve {
 }
 
 export type Inversion =
-  | { found: true; offset: number }
-  | { found: false; reason: 'flat' | 'out-of-reach' | 'two-concentrations' }
+  { found: true; offset: number } | { found: false; reason: 'flat' | 'out-of-reach' | 'two-concentrations' }
 
 /** Slope of the curve at d. */
 export function slopeAt(curve: CentredCurve, d: number): number {
@@ -32,7 +31,10 @@ export function invertCurve(curve: CentredCurve, y: number, range: { low: number
   const cLo = sum.lo
   if (a === 0) return { found: true, offset: -c / b }
 
-  const discriminant = sum.set(0).addProduct(b, 0, b, 0).addProduct(-4 * a, 0, c, cLo).value
+  const discriminant = sum
+    .set(0)
+    .addProduct(b, 0, b, 0)
+    .addProduct(-4 * a, 0, c, cLo).value
   if (!(discriminant >= 0)) return { found: false, reason: 'out-of-reach' }
   const root = Math.sqrt(discriminant)
   const q = b >= 0 ? -(b + root) / 2 : -(b - root) / 2

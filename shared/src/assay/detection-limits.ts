@@ -137,7 +137,9 @@ function quantifyOnCurve(given: { fit: CalibrationFit; readingVariance: number; 
   const isEnough = (x: number) => {
     const d = x - centred.centre
     const slope = sign * slopeAt(centred, d)
-    return slope > 0 && x * slope >= factor * Math.sqrt(readingVariance + curveVariance(centred.covariance, d))
+    return (
+      slope > 0 && x * slope >= factor * Math.sqrt(readingVariance + curveVariance(centred.covariance, d))
+    )
   }
   if (readingVariance === 0 && isEnough(0)) return 0
   const steps = 400

@@ -94,7 +94,8 @@ export function predictConcentration(
     confidence,
     interval: { low: concentration - t * standardError, high: concentration + t * standardError },
     fieller: isCurve ? null : fiellerInterval({ fit, absorbance, readingVariance, t }),
-    outsideRange: concentration < range.low - slack ? 'below' : concentration > range.high + slack ? 'above' : null,
+    outsideRange:
+      concentration < range.low - slack ? 'below' : concentration > range.high + slack ? 'above' : null,
     absorbance,
     readings: m,
     responseWeight,
@@ -108,10 +109,16 @@ export function predictConcentration(
 
 function noConcentration(reason: 'flat' | 'out-of-reach' | 'two-concentrations'): AssayError {
   if (reason === 'flat') {
-    return new AssayError('slope-not-significant', 'The calibration is flat: an absorbance gives no concentration.')
+    return new AssayError(
+      'slope-not-significant',
+      'The calibration is flat: an absorbance gives no concentration.',
+    )
   }
   if (reason === 'out-of-reach') {
-    return new AssayError('no-root-in-range', 'The curve never reaches this absorbance. Dilute and read again.')
+    return new AssayError(
+      'no-root-in-range',
+      'The curve never reaches this absorbance. Dilute and read again.',
+    )
   }
   return new AssayError(
     'no-root-in-range',

@@ -52,7 +52,9 @@ export function requireSlope(fit: CalibrationFit, d: number): number {
   const slope = slopeAt(fit.centred, d)
   const { covariance } = fit.centred
   // variance of b + 2 a d is the curve variance of the derivative's coefficients
-  const derivative = covariance.slice(1).map((row, j) => row.slice(1).map((value, k) => value * (j + 1) * (k + 1)))
+  const derivative = covariance
+    .slice(1)
+    .map((row, j) => row.slice(1).map((value, k) => value * (j + 1) * (k + 1)))
   const error = Math.sqrt(curveVariance(derivative, d))
   if (Math.abs(slope) > error * tTwoSidedQuantile(0.95, fit.degreesOfFreedom)) return slope
   throw new AssayError(
