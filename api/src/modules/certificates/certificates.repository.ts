@@ -65,8 +65,19 @@ export class CertificatesRepository {
       .$if(clientId !== undefined, (query) => query.where('certificates.clientId', '=', clientId ?? ''))
       .$if(state !== undefined, (query) => query.where('certificates.state', '=', state ?? ''))
       .$if(number !== undefined, (query) =>
-        query.where((eb) =>
-          eb.or([eb('certificates.number', 'like', like), eb('samples.number', 'like', like)]),
+        // each side by its own index; an "or" over two tables would read every certificate
+        query.where('certificates.id', 'in', (eb) =>
+          eb
+            .selectFrom('certificates as own')
+            .select('own.id')
+            .where('own.number', 'like', like)
+            .union(
+              eb
+                .selectFrom('certificates as ofSample')
+                .innerJoin('samples as sample', 'sample.id', 'ofSample.sampleId')
+                .select('ofSample.id')
+                .where('sample.number', 'like', like),
+            ),
         ),
       )
       .orderBy('certificates.id', 'desc')

@@ -4,7 +4,7 @@ import type { Actor } from '@weirlight/shared/permissions'
 import { certificateStates, type CertificateState } from '@weirlight/shared/states'
 import { Clock, HandlesEvent, JobsService, notAllowedNow, Settings, type Trx } from '../../platform/index.js'
 import { LaboratoryService } from '../laboratory/index.js'
-import { batchReleased, ResultsService } from '../results/index.js'
+import { ResultsService, samplesReported } from '../results/index.js'
 import { CertificatesRepository } from './certificates.repository.js'
 import { renderCertificate } from './jobs/certificates.jobs.js'
 import { makeSnapshot } from './make-snapshot.js'
@@ -24,15 +24,15 @@ export class IssuingService {
     private readonly certificates: CertificatesRepository,
   ) {}
 
-  /** A sample whose last determination was released gets its certificate in the same transaction. */
-  @HandlesEvent(batchReleased)
-  async issueForReleased(
+  /** A sample in which nothing is left to measure gets its certificate in the same transaction. */
+  @HandlesEvent(samplesReported)
+  async issueForReported(
     trx: Trx,
     { sampleIds, actor }: { sampleIds: string[]; actor: Actor },
   ): Promise<void> {
     for (const sampleId of [...sampleIds].sort((a, b) => Number(a) - Number(b))) {
-      const sample = await this.certificates.lockSample(trx, sampleId)
-      if (sample.state === 'reported') await this.issue(trx, { actor, sampleId, reason: LATER_RESULTS })
+      await this.certificates.lockSample(trx, sampleId)
+      await this.issue(trx, { actor, sampleId, reason: LATER_RESULTS })
     }
   }
 

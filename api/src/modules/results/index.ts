@@ -1,4 +1,4 @@
-export { batchReleased } from './events.js'
+export { batchReleased, samplesReported } from './events.js'
 export { CAUTION, type ResultInputs } from './result-inputs.js'
 export { toResultRow } from './result-row.js'
 export { ResultsModule } from './results.module.js'

@@ -1,4 +1,5 @@
 import { Injectable } from '@nestjs/common'
+import { sampleStates, type SampleState } from '@weirlight/shared/states'
 import { sql } from 'kysely'
 import { notFound, type Executor, type Trx } from '../../platform/index.js'
 
@@ -110,10 +111,31 @@ export class ReviewRepository {
       .execute()
   }
 
-  /** A sample is reported when nothing of it is left to measure; a rerun takes it back into analysis. */
-  async settleSamples(trx: Trx, ids: readonly string[]): Promise<void> {
-    if (ids.length === 0) return
-    // locked first and counted after: of two batches that end one sample at the same moment, the second sees the first
+  /**
+   * A sample is reported when nothing of it is left to measure; a rerun takes it back into analysis.
+   * @returns those that are reported
+   */
+  async settleSamples(trx: Trx, ids: readonly string[]): Promise<string[]> {
+    const reported: string[] = []
+    for (const { id, state, isOpen } of await this.lockSamples(trx, ids)) {
+      const next = sampleStates.move(state as SampleState, isOpen ? 'analyse' : 'report')
+      if (!isOpen) reported.push(id)
+      if (state !== next) await this.moveSample(trx, id, next)
+    }
+    return reported
+  }
+
+  /** @returns whether the sample was in analysis and is reported now */
+  async reportIfDone(trx: Trx, id: string): Promise<boolean> {
+    const [sample] = await this.lockSamples(trx, [id])
+    if (sample?.state !== 'in-analysis' || sample.isOpen || !sample.isReleased) return false
+    await this.moveSample(trx, id, sampleStates.move(sample.state, 'report'))
+    return true
+  }
+
+  /** Locked first and counted after: of two batches that end one sample at the same moment, the second sees the first. */
+  private async lockSamples(trx: Trx, ids: readonly string[]) {
+    if (ids.length === 0) return []
     await trx
       .selectFrom('samples')
       .select('id')
@@ -121,36 +143,26 @@ export class ReviewRepository {
       .orderBy('id')
       .forUpdate()
       .execute()
-    const locked = await trx
+    return trx
       .selectFrom('samples')
-      .select((eb) => [
+      .innerJoin('determinations', 'determinations.sampleId', 'samples.id')
+      .select([
         'samples.id',
         'samples.state',
-        eb
-          .exists(
-            eb
-              .selectFrom('determinations')
-              .whereRef('determinations.sampleId', '=', 'samples.id')
-              .where('determinations.state', 'not in', ['released', 'withdrawn'])
-              .select('determinations.id'),
-          )
-          .as('isOpen'),
+        sql<boolean>`bool_or(determinations.state not in ('released', 'withdrawn'))`.as('isOpen'),
+        sql<boolean>`bool_or(determinations.state = 'released')`.as('isReleased'),
       ])
       .where('samples.id', 'in', [...ids])
+      .groupBy(['samples.id', 'samples.state'])
       .orderBy('samples.id')
       .execute()
-    for (const next of ['in-analysis', 'reported'] as const) {
-      const moved = locked.filter((row) => row.isOpen === (next === 'in-analysis') && row.state !== next)
-      if (moved.length === 0) continue
-      await trx
-        .updateTable('samples')
-        .set((eb) => ({ state: next, version: eb('version', '+', 1) }))
-        .where(
-          'id',
-          'in',
-          moved.map(({ id }) => id),
-        )
-        .execute()
-    }
+  }
+
+  private async moveSample(trx: Trx, id: string, state: SampleState): Promise<void> {
+    await trx
+      .updateTable('samples')
+      .set((eb) => ({ state, version: eb('version', '+', 1) }))
+      .where('id', '=', id)
+      .execute()
   }
 }

@@ -15,14 +15,16 @@ import {
   Clock,
   Database,
   DomainEvents,
+  HandlesEvent,
   invalidInput,
   notAllowedNow,
   type Trx,
 } from '../../platform/index.js'
 import { BatchesService } from '../batches/index.js'
 import { CalibrationsService } from '../calibrations/index.js'
+import { determinationWithdrawn } from '../samples/index.js'
 import { AuthorisationService, SigningService } from '../users/index.js'
-import { batchReleased } from './events.js'
+import { batchReleased, samplesReported } from './events.js'
 import { ResultsRepository, type ResultToStore } from './results.repository.js'
 import { ReviewRepository } from './review.repository.js'
 
@@ -133,7 +135,7 @@ export class ReviewService {
         })
         await this.review.release(trx, { id, userId: actor.userId, at, comment: body.comment })
         const sampleIds = [...new Set(results.map((row) => row.sampleId))]
-        await this.review.settleSamples(trx, sampleIds)
+        const reported = await this.review.settleSamples(trx, sampleIds)
         const content = await this.batches.signedContent(trx, id)
         for (const meaning of ['reviewed', 'released'] as const) {
           await this.signing.sign(trx, { actor, thing: 'batches', thingId: id, meaning, content })
@@ -141,12 +143,20 @@ export class ReviewService {
         await this.events.publish(trx, batchReleased, {
           batchId: id,
           resultIds: released.map((row) => row.id),
-          sampleIds,
           actor,
         })
+        await this.events.publish(trx, samplesReported, { sampleIds: reported, actor })
         return this.batches.view(trx, id, actor)
       },
     )
+  }
+
+  /** A sample whose last open determination is withdrawn after the others were released has nothing left to wait for. */
+  @HandlesEvent(determinationWithdrawn)
+  async reportRest(trx: Trx, { sampleId, actor }: { sampleId: string; actor: Actor }): Promise<void> {
+    if (await this.review.reportIfDone(trx, sampleId)) {
+      await this.events.publish(trx, samplesReported, { sampleIds: [sampleId], actor })
+    }
   }
 
   private rerunsOf(

@@ -1,3 +1,4 @@
+import { ENGINE_VERSION } from '@weirlight/shared/assay'
 import { determinationName, showUnit, type PositionLimit, type StoryView } from '@weirlight/shared/contracts'
 import { paths } from '@weirlight/shared/paths'
 import type { StoredFit } from '@weirlight/shared/worksheet'
@@ -126,12 +127,18 @@ function reported({ result, inputs }: Told): StoryView['lines'][number] {
   }
 }
 
+const majorOf = (version: string) => version.split('.')[0]
+
 function computed({ result, recomputed }: Told): StoryView['lines'][number] {
   const same = Object.is(result.concentration, recomputed)
+  const isOtherMajor = majorOf(result.engineVersion) !== majorOf(ENGINE_VERSION)
+  const different = isOtherMajor
+    ? `engine ${result.engineVersion} is another major version, whose numbers may differ`
+    : 'DIFFERENT'
   return {
     heading: 'Computed',
     main: `${Number(result.concentration.toPrecision(6))} mg/L`,
-    detail: `stored ${result.concentration} · recomputed ${recomputed} · engine ${result.engineVersion} · ${same ? 'same' : 'DIFFERENT'}`,
+    detail: `stored ${result.concentration} · recomputed ${recomputed} · engine ${result.engineVersion} · ${same ? 'same' : different}`,
     to: null,
   }
 }

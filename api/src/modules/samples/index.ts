@@ -1,3 +1,4 @@
+export { determinationWithdrawn } from './events.js'
 export { SamplesModule } from './samples.module.js'
 export { SamplesService } from './samples.service.js'
 export { ReceivingService, type Receiving } from './receiving.service.js'

@@ -88,7 +88,11 @@ export class SamplesRepository {
     return rows[0]
   }
 
+  /** Its sample first, as everywhere: two people never wait for each other. */
   async lockDetermination(trx: Trx, id: string): Promise<LockedDetermination | undefined> {
+    await sql`select id from samples where id = (select sample_id from determinations where id = ${id}) for update`.execute(
+      trx,
+    )
     const { rows } = await sql<LockedDetermination>`
       select id, sample_id, state, version from determinations where id = ${id} for update`.execute(trx)
     return rows[0]

@@ -17,6 +17,7 @@ import {
   assertVersion,
   Clock,
   Database,
+  DomainEvents,
   idFromCursor,
   invalidInput,
   isUniqueViolation,
@@ -27,6 +28,7 @@ import {
   type Executor,
   type Trx,
 } from '../../platform/index.js'
+import { determinationWithdrawn } from './events.js'
 import { holdingOf } from './holding.js'
 import { ReceivingRepository } from './receiving.repository.js'
 import type { LockedSample } from './sample-rows.js'
@@ -43,6 +45,7 @@ export class SamplesService {
     private readonly clock: Clock,
     private readonly samples: SamplesRepository,
     private readonly receiving: ReceivingRepository,
+    private readonly events: DomainEvents,
   ) {}
 
   async list(query: QueryOf<typeof listSamples>): Promise<AnswerOf<typeof listSamples>> {
@@ -147,6 +150,7 @@ export class SamplesService {
       await assertVersion(trx, { thing: 'determinations', id, has: row.version, sent: body.version })
       determinationStates.move(row.state, 'withdraw')
       await this.samples.withdraw(trx, [id], body.reason)
+      await this.events.publish(trx, determinationWithdrawn, { sampleId: row.sampleId, actor })
       return this.view(trx, row.sampleId)
     })
   }

@@ -8,8 +8,9 @@ import { SYSTEM } from '../../platform/database/acting.js'
 import type { TestApp } from '../test-app.js'
 import type { TestDatabase } from '../test-database.js'
 import { anOpenBatch, type aBatchForm } from './batches.builders.js'
-import { anAnalyst, anInstrument, aSigner, PASSPHRASE } from './bench.builders.js'
-import { aCalibrationInForce } from './calibrations.builders.js'
+import { aLot, anAnalyst, anInstrument, aSigner, PASSPHRASE } from './bench.builders.js'
+import { aCalibrationInForce, ironStandards } from './calibrations.builders.js'
+import { methodId as methodIdOf } from './reference.builders.js'
 import { anAcceptedSample, aPoint } from './samples.builders.js'
 
 /** Two absorbances of one tube. On the line of `IRON_STANDARDS`, 0.197 A per mg/L: constructed. */
@@ -28,6 +29,9 @@ const CONTROLS: Partial<Record<BatchView['rows'][number]['kind'], Pair>> = {
   control: ['0.1971', '0.1969'],
 }
 
+export type Metal = 'Fe' | 'Cu'
+const METHODS = { Fe: 'fe-phenanthroline', Cu: 'cu-bathocuproine' } as const
+
 export interface Bench {
   analyst: Actor
   reviewer: Actor
@@ -36,33 +40,37 @@ export interface Bench {
   methodId: string
 }
 
-const benches = new WeakMap<TestDatabase, Promise<Bench>>()
+const benches = new WeakMap<TestDatabase, Map<Metal, Promise<Bench>>>()
 
-/** One bench for iron, made once a test database: an analyst, a QA manager who may sign, a calibration in force. */
-export function theBench(at: TestApp): Promise<Bench> {
-  const known = benches.get(at.database)
-  if (known) return known
-  const made = makeBench(at)
+/** One bench for a metal, made once a test database: an analyst, a QA manager who may sign, a calibration in force. */
+export function theBench(at: TestApp, metal: Metal = 'Fe'): Promise<Bench> {
+  const made = benches.get(at.database) ?? new Map<Metal, Promise<Bench>>()
   benches.set(at.database, made)
-  return made
+  const bench = made.get(metal) ?? makeBench(at, metal)
+  made.set(metal, bench)
+  return bench
 }
 
-async function makeBench(at: TestApp): Promise<Bench> {
-  const analyst = await anAnalyst(at.database, { name: 'Ana Lyst' })
-  const reviewer = await aSigner(at.database, { name: 'Quentin Abel' })
+/** Copper by bathocuproine has, to three digits, the slope of iron by phenanthroline (their absorptivities over their molar masses): the same absorbances serve. */
+async function makeBench(at: TestApp, metal: Metal): Promise<Bench> {
+  const methodCode = METHODS[metal]
+  const analyst = await anAnalyst(at.database, { methodCode, name: 'Ana Lyst' })
+  const reviewer = await aSigner(at.database, { methodCode, name: 'Quentin Abel' })
   const instrument = await anInstrument(at.database)
+  const methodId = await methodIdOf(at.database, methodCode)
+  const stock = await aLot(at.database, { analyte: metal })
+  const second = await aLot(at.database, { kind: 'second-source', analyte: metal })
   const calibration = await aCalibrationInForce(at, {
     analyst,
     signer: reviewer,
+    methodId,
     instrumentId: instrument.id,
+    stockLotId: stock.id,
+    standards: (await ironStandards(at)).map((standard) =>
+      standard.role === 'second-source' ? { ...standard, lotId: second.id } : standard,
+    ),
   })
-  return {
-    analyst,
-    reviewer,
-    instrumentId: instrument.id,
-    calibrationId: calibration.id,
-    methodId: calibration.methodId,
-  }
+  return { analyst, reviewer, instrumentId: instrument.id, calibrationId: calibration.id, methodId }
 }
 
 /** Another calibration in force on its own instrument, so that nothing else in the file is touched by it. */
@@ -126,6 +134,7 @@ export function runReadings(
 
 type BatchChanges = Parameters<typeof aBatchForm>[1] & {
   analyst?: Actor
+  metal?: Metal
   samples?: readonly Pair[]
   controls?: typeof CONTROLS
 }
@@ -137,14 +146,22 @@ export interface MadeBatch {
 /** A fully read run on the bench's calibration; one new sample when no determination is given. */
 export async function aRun(
   at: TestApp,
-  { samples = [], controls = {}, ...changes }: BatchChanges = {},
+  { samples = [], controls = {}, metal = 'Fe', ...changes }: BatchChanges = {},
 ): Promise<MadeBatch> {
-  const bench = await theBench(at)
+  const bench = await theBench(at, metal)
+  const lots =
+    metal === 'Fe'
+      ? {}
+      : {
+          verificationLotId: (await aLot(at.database, { kind: 'working-standard', analyte: metal })).id,
+          controlLotId: (await aLot(at.database, { kind: 'control', analyte: metal })).id,
+        }
   const analyst = changes.analyst ?? bench.analyst
   const { batch } = await anOpenBatch(at, {
     methodId: bench.methodId,
     calibrationId: bench.calibrationId,
     sampleCount: Math.max(1, samples.length),
+    ...lots,
     ...changes,
     analyst,
   })
@@ -172,7 +189,7 @@ export async function aReleasedBatch(
   }: BatchChanges & { reviewer?: Actor; rerunPositionIds?: string[]; comment?: string } = {},
 ): Promise<MadeBatch & { reviewer: Actor }> {
   const { batch, analyst } = await aSubmittedBatch(at, changes)
-  const actor = reviewer ?? (await theBench(at)).reviewer
+  const actor = reviewer ?? (await theBench(at, changes.metal)).reviewer
   const released = await at.get(ReviewService).release(actor, batch.id, {
     version: batch.version,
     passphrase: PASSPHRASE,
