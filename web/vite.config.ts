@@ -8,6 +8,8 @@ const conditions = ['source', 'module', 'browser', 'development|production']
 export default defineConfig({
   plugins: [react(), precompress()],
   resolve: { conditions },
+  // tests without a page resolve as a server does: the workspace's sources there too, built or not
+  ssr: { resolve: { conditions, externalConditions: conditions } },
   // shown on the page that says how the installation stands
   define: { 'import.meta.env.VITE_VERSION': JSON.stringify(packageJson.version) },
   server: {
