@@ -83,7 +83,7 @@ export function AlertsList() {
         />
       </FilterBar>
       <DataTable
-        label="Alerts"
+        label="Alerts, newest first"
         query={useInfiniteQuery(alertPages(filters))}
         columns={columns}
         rowKey={(row) => row.id}

@@ -1,8 +1,9 @@
-import { Button, Form, Input, Modal } from 'antd'
+import { Button, Form, Input } from 'antd'
 import { LIMITS } from '@weirlight/shared/limits'
 import { acknowledgeAlert, getAlert, getToday, listAlerts, portalNow } from '@weirlight/shared/contracts'
 import { useNotice } from '../../../lib'
 import { useEndpointForm } from '../../../lib/use-endpoint-form'
+import { FormDialog } from '../../../ui/form-dialog'
 import { FormProblem } from '../../../ui/form-problem'
 import type { AlertView } from '../api/alert-queries'
 import { overWhat, whatWasFound } from '../alert-words'
@@ -16,17 +17,9 @@ interface SeenDialogProps {
 /** The client says that it has seen the alert; a note may go with it. */
 export function SeenDialog({ alert, isOpen, onClose }: SeenDialogProps) {
   return (
-    <Modal
-      open={isOpen}
-      onCancel={onClose}
-      title="I have seen this"
-      footer={null}
-      destroyOnHidden
-      mask={{ closable: false }}
-      width={480}
-    >
+    <FormDialog isOpen={isOpen} onClose={onClose} title="I have seen this">
       <SeenForm alert={alert} onClose={onClose} />
-    </Modal>
+    </FormDialog>
   )
 }
 

@@ -67,7 +67,7 @@ export function CertificatesList() {
         />
       </FilterBar>
       <DataTable
-        label="Certificates"
+        label="Certificates, newest first"
         query={useInfiniteQuery(certificatePages(filters))}
         columns={columns}
         rowKey={(row) => row.id}

@@ -39,7 +39,7 @@ export function ResultsList() {
         <ChosenTrend pointId={filters.pointId} clientId={filters.clientId} analyte={filters.analyte} />
         <div>
           <DataTable
-            label="Results"
+            label="Results, newest first"
             query={useInfiniteQuery(resultPages(filters))}
             columns={columns}
             rowKey={(row) => row.id}
