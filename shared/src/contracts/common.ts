@@ -5,7 +5,7 @@ import { LIMITS } from '../limits.js'
 export const id = z.string().regex(/^[1-9]\d{0,18}$/, 'This is not a valid reference.')
 export const idParams = z.object({ id })
 export const version = z.number().int().min(1)
-export const instant = z.iso.datetime({ offset: true })
+export const instant = z.iso.datetime({ offset: true, error: 'Write date and time as 2026-12-01 14:05.' })
 export const day = z.iso.date('Write the date as year-month-day, for example 2026-12-01.')
 export const name = z
   .string()

@@ -5,11 +5,13 @@ import { Outlet } from 'react-router-dom'
 import { SessionContext } from '../lib/session'
 import { StoryProvider } from '../ui/story'
 import { storySlot } from './story-slot'
+import { giveStylesTheNonce } from './style-nonce'
 import { antdTheme, DARK } from './theme'
 import { useBenchTheme } from './use-bench-theme'
 
 // a server with a nonce in its content policy writes it here
 const nonce = document.querySelector('meta[name="csp-nonce"]')?.getAttribute('content')
+if (nonce) giveStylesTheNonce(nonce)
 
 /** antd in the bench theme, and the drawer that any number opens. */
 export function KitFrame() {

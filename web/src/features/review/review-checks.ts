@@ -74,7 +74,7 @@ function controlCheck(rows: readonly PositionView[], kinds: PositionView['kind']
   return [
     {
       what,
-      found: found.map((row) => row.assessment.qcText ?? 'not read').join(', '),
+      found: [...new Set(found.map((row) => row.assessment.qcText ?? 'not read'))].join(', '),
       outcome: failed ? 'fail' : isJudged ? 'pass' : 'not-judged',
     },
   ]

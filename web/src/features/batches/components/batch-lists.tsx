@@ -5,7 +5,12 @@ import { Box, Clock, DataTable, Failed, FilterBar, FilterSelect, StatusTag, type
 import { methodsQuery } from '../../calibrations'
 import { batchesInState, batchPages, type BatchRow, type BatchState } from '../api/batch-queries'
 
-const NUMBER: Column<BatchRow> = { key: 'number', title: 'Batch', text: (row) => row.number }
+const NUMBER: Column<BatchRow> = {
+  key: 'number',
+  title: 'Batch',
+  text: (row) => row.number,
+  isNarrow: true,
+}
 const METHOD: Column<BatchRow> = { key: 'method', title: 'Method', text: (row) => row.methodTitle }
 const READ: Column<BatchRow> = {
   key: 'read',
@@ -135,7 +140,7 @@ export function AllBatches() {
           ABOVE,
           FINDINGS,
           ANALYST,
-          { key: 'opened', title: 'Opened', text: (row) => at(row.openedAt) },
+          { key: 'opened', title: 'Opened', isNarrow: true, text: (row) => at(row.openedAt) },
         ]}
         rowKey={(row) => row.id}
         rowTo={(row) => paths.batch(row.id)}

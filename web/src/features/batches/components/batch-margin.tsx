@@ -38,12 +38,19 @@ export function useBatchFacts(batch: BatchView): MaybeFact[] {
         <span key={lot.id}>
           {index > 0 && ' · '}
           <Link to={paths.material(lot.id)}>
-            {lot.name} {lot.number}
+            {lot.name} <span className="nowrap">{lot.number}</span>
           </Link>
         </span>
       )),
     },
-    { term: 'Analyst', detail: `${batch.openedBy.name}, opened ${at(batch.openedAt)}` },
+    {
+      term: 'Analyst',
+      detail: (
+        <>
+          {batch.openedBy.name}, opened <span className="nowrap">{at(batch.openedAt)}</span>
+        </>
+      ),
+    },
     batch.submittedAt !== null && { term: 'Submitted', detail: at(batch.submittedAt) },
     batch.releasedAt !== null && { term: 'Released', detail: at(batch.releasedAt) },
   ]

@@ -21,15 +21,21 @@ import {
   type CalibrationState,
 } from '../api/calibration-queries'
 import { decimals, significant } from '../draft/number-texts'
+import './calibrations.css'
 
-const NUMBER: Column<CalibrationRow> = { key: 'number', title: 'Calibration', text: (row) => row.number }
+const NUMBER: Column<CalibrationRow> = {
+  key: 'number',
+  title: 'Calibration',
+  text: (row) => row.number,
+  isNarrow: true,
+}
 const METHOD: Column<CalibrationRow> = { key: 'method', title: 'Method', text: (row) => row.methodTitle }
 const INSTRUMENT: Column<CalibrationRow> = {
   key: 'instrument',
   title: 'Instrument and cell',
   cell: (row) => (
     <>
-      {row.instrumentName} <span className="quiet">· {row.cellPathCm} cm</span>
+      {row.instrumentName} <span className="quiet nowrap">· {row.cellPathCm} cm</span>
     </>
   ),
 }
@@ -44,7 +50,7 @@ const CORRELATION: Column<CalibrationRow> = {
   key: 'r',
   title: 'r',
   kind: 'number',
-  text: (row) => decimals(row.correlation, 5),
+  text: (row) => decimals(row.correlation, 6),
 }
 const PREPARED: Column<CalibrationRow> = {
   key: 'by',
@@ -224,6 +230,7 @@ export function AllCalibrations() {
           {
             key: 'until',
             title: 'Until',
+            isNarrow: true,
             text: (row) => (row.validUntil ? day(row.validUntil) : null),
           },
         ]}

@@ -169,7 +169,7 @@ function factsOf(view: CalibrationView, at: (instant: string) => string) {
         <span key={lot.id}>
           {index > 0 && ' · '}
           <Link to={paths.material(lot.id)}>
-            {lot.name} {lot.number}
+            {lot.name} <span className="nowrap">{lot.number}</span>
           </Link>
         </span>
       )),

@@ -87,7 +87,7 @@ function InstrumentPage({ instrument }: { instrument: InstrumentView }) {
 function Checks({ checks }: { checks: InstrumentView['checks'] }) {
   const { at } = useLaboratoryTime()
   const columns: Column<InstrumentCheck>[] = [
-    { key: 'at', title: 'When', text: (row) => at(row.checkedAt) },
+    { key: 'at', title: 'When', isNarrow: true, text: (row) => at(row.checkedAt) },
     { key: 'kind', title: 'Check', text: (row) => CHECK_WORDS[row.kind] },
     { key: 'passed', title: 'Outcome', cell: (row) => <StatusTag mark={row.passed ? PASSED : FAILED} /> },
     { key: 'nominal', title: 'Nominal', kind: 'number', text: (row) => row.nominal },

@@ -32,17 +32,17 @@ export function MailList() {
     onDone: (message) => notice.done(`The message to ${message.to} is tried again now.`),
   })
   const columns: Column<Message>[] = [
-    { key: 'when', title: 'Written', text: (row) => at(row.createdAt) },
+    { key: 'when', title: 'Written', isNarrow: true, text: (row) => at(row.createdAt) },
     { key: 'state', title: 'State', cell: (row) => <StatusTag mark={STATE_MARKS.mail[row.state]} /> },
     { key: 'to', title: 'To', text: (row) => row.to },
     {
       key: 'subject',
       title: 'Subject',
       cell: (row) => (
-        <>
+        <div className="wide-cell">
           {row.subject} <About message={row} />
           {row.lastError !== '' && row.state !== 'sent' && <div className="note above">{row.lastError}</div>}
-        </>
+        </div>
       ),
     },
     { key: 'tries', title: 'Tries', kind: 'number', text: (row) => String(row.attempts) },

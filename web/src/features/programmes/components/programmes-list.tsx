@@ -111,7 +111,12 @@ const columnsOn = (day: string): Column<Limit>[] => [
     wrap: (_, aligned) => <span className="strong">{aligned}</span>,
   },
   { key: 'unit', title: 'Unit', text: (row) => showUnit(row.unit) },
-  { key: 'rule', title: 'How it is compared', text: (row) => RULE_WORDS[row.decisionRule](row.digits) },
+  {
+    key: 'rule',
+    title: 'How it is compared',
+    isSecondary: true,
+    text: (row) => RULE_WORDS[row.decisionRule](row.digits),
+  },
   {
     key: 'dates',
     title: 'Dates',

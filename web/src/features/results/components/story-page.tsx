@@ -85,7 +85,9 @@ function StoryOnPage({ story }: { story: StoryView }) {
         </Strip>
       )}
       <p className="only-print note">
-        Taken away by {name}, {nowText()}.
+        {certificate ? `On certificate ${certificate.number}. ` : ''}
+        {result.clientName}, {result.pointName}, collected {at(result.collectedAt)}. Taken away by {name},{' '}
+        {nowText()}.
       </p>
       <div className="stack">
         <StoryLines lines={story.lines} />

@@ -152,7 +152,7 @@ function Holding({ of }: { of: Determination }) {
     return (
       <>
         <Clock dueAt={of.holding.dueAt} soonHours={24} />
-        <div className="note">{of.holding.rule}</div>
+        <div className="note not-on-phone">{of.holding.rule}</div>
       </>
     )
   }

@@ -52,12 +52,12 @@ export function SampleRegister() {
       key: 'point',
       title: 'Point and client',
       cell: (row) => (
-        <>
+        <div className="wide-cell">
           {row.pointName}{' '}
           <span className="quiet">
             {row.pointCode} · {row.clientName}
           </span>
-        </>
+        </div>
       ),
     },
     { key: 'what', title: 'Determinations', cell: (row) => <DeterminationNames of={row.determinations} /> },

@@ -33,12 +33,12 @@ export function WaitingList() {
       key: 'point',
       title: 'Point and client',
       cell: (row) => (
-        <>
+        <div className="wide-cell">
           {row.pointName}{' '}
           <span className="quiet">
             {row.pointCode} · {row.clientName}
           </span>
-        </>
+        </div>
       ),
     },
     {

@@ -1,7 +1,8 @@
 import { useQuery } from '@tanstack/react-query'
-import { Form, Select } from 'antd'
+import { Form, Select, type RefSelectProps } from 'antd'
+import { useEffect, useRef, useState } from 'react'
 import { Box } from '../../../ui'
-import { clientQuery, clientsQuery } from '../../clients'
+import { clientQuery, clientsQuery, type SamplingPoint } from '../../clients'
 
 interface WhereFromProps {
   isNext: boolean
@@ -14,6 +15,13 @@ export function WhereFrom({ isNext, moveOn }: WhereFromProps) {
   const clientId = Form.useWatch<string | undefined>('clientId', form) ?? ''
   const clients = useQuery(clientsQuery)
   const client = useQuery({ ...clientQuery(clientId), enabled: clientId !== '' })
+  const point = useRef<RefSelectProps>(null)
+  const [justChosen, setJustChosen] = useState('')
+  useEffect(() => {
+    // the point can only be chosen once its client is drawn
+    if (justChosen !== '' && justChosen === clientId) point.current?.focus()
+  }, [justChosen, clientId])
+  const points = (client.data?.points ?? []).filter((each) => each.active)
   return (
     <Box title="Where it comes from">
       <div className="form-grid">
@@ -28,24 +36,70 @@ export function WhereFrom({ isNext, moveOn }: WhereFromProps) {
               .filter((each) => each.active)
               .map((each) => ({ value: each.id, label: `${each.code} · ${each.name}` }))}
             onChange={() => form.setFieldsValue({ pointId: undefined })}
-            onSelect={moveOn}
+            onSelect={(id: string) => setJustChosen(id)}
           />
         </Form.Item>
         <Form.Item name="pointId" label="Sampling point" required>
-          <Select
-            showSearch={{ optionFilterProp: 'label' }}
+          <PointSelect
+            ref={point}
+            points={points}
+            hasClient={clientId !== ''}
+            isLoading={clientId !== '' && client.isPending}
             autoFocus={isNext || clientId !== ''}
-            placeholder={clientId === '' ? 'Choose the client first' : 'Code or name'}
-            disabled={clientId === ''}
-            loading={clientId !== '' && client.isPending}
-            notFoundContent="No point of this name"
-            options={(client.data?.points ?? [])
-              .filter((point) => point.active)
-              .map((point) => ({ value: point.id, label: `${point.code} · ${point.name}` }))}
-            onSelect={moveOn}
+            moveOn={moveOn}
           />
         </Form.Item>
       </div>
     </Box>
+  )
+}
+
+interface PointSelectProps {
+  ref: React.Ref<RefSelectProps>
+  points: readonly SamplingPoint[]
+  hasClient: boolean
+  isLoading: boolean
+  autoFocus: boolean
+  moveOn: () => void
+  value?: string
+  onChange?: (value: string) => void
+  id?: string
+}
+
+/** A scanner is faster than the list: a code that was read before the points are there is chosen once they are. */
+function PointSelect(props: PointSelectProps) {
+  const { points, hasClient, isLoading, moveOn, value, onChange } = props
+  const early = useRef('')
+  useEffect(() => {
+    if (isLoading || early.current === '') return
+    const found = points.find((each) => each.code.toLowerCase() === early.current)
+    early.current = ''
+    if (!found) return
+    onChange?.(found.id)
+    moveOn()
+    // when the list has come, and then only
+    // eslint-disable-next-line react-hooks/exhaustive-deps
+  }, [isLoading, points.length])
+  return (
+    <Select
+      ref={props.ref}
+      {...(props.id ? { id: props.id } : {})}
+      value={value ?? null}
+      showSearch={{
+        optionFilterProp: 'label',
+        onSearch: (text) => {
+          // what is typed is emptied by Enter; what was read stays
+          if (isLoading && text.trim() !== '') early.current = text.trim().toLowerCase()
+        },
+      }}
+      autoFocus={props.autoFocus}
+      placeholder={hasClient ? 'Code or name' : 'Choose the client first'}
+      disabled={!hasClient}
+      loading={isLoading}
+      notFoundContent={isLoading ? 'Points are being read' : 'No point of this name'}
+      options={points.map((point) => ({ value: point.id, label: `${point.code} · ${point.name}` }))}
+      onChange={(id: string) => onChange?.(id)}
+      onSelect={moveOn}
+    />
   )
 }

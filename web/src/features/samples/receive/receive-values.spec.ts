@@ -47,6 +47,9 @@ describe('the receiving form', () => {
       ]),
     )
   })
+  it('takes a blank for nothing measured', () => {
+    expect(paths({ ...full, ph: ' ', temperatureC: '' })).toEqual([])
+  })
   it('names a decimal comma, and times in the wrong order', () => {
     expect(paths({ ...full, ph: '1,6' })).toEqual(['ph'])
     expect(paths({ ...full, receivedAt: '2026-11-30T07:00:00-05:00' })).toEqual(['receivedAt'])

@@ -4,20 +4,24 @@ export type ReceiveBody = BodyInput<typeof receiveSample>
 /** the form as it stands: anything may still be missing */
 export type ReceiveValues = { [Field in keyof ReceiveBody]?: ReceiveBody[Field] | undefined }
 
-/** What the form sends; what is missing is sent empty and named by the contract on its field. */
+/**
+ * What the form sends. What must be there and is missing stays missing, so that the contract asks for it on its field;
+ * what may be missing is sent empty.
+ */
 export function bodyOf(values: ReceiveValues): ReceiveBody {
+  const required = (text: string | undefined) => (text?.trim() ? text.trim() : undefined) as string
   return {
-    draftId: values.draftId ?? '',
-    clientId: values.clientId ?? '',
-    pointId: values.pointId ?? '',
+    draftId: required(values.draftId),
+    clientId: required(values.clientId),
+    pointId: required(values.pointId),
     purpose: values.purpose as ReceiveBody['purpose'],
     kind: values.kind as ReceiveBody['kind'],
-    collectedAt: values.collectedAt ?? '',
+    collectedAt: required(values.collectedAt),
     collectedBy: values.collectedBy ?? '',
-    receivedAt: values.receivedAt ?? '',
+    receivedAt: required(values.receivedAt),
     preservation: values.preservation as ReceiveBody['preservation'],
-    ph: values.ph ?? '',
-    temperatureC: values.temperatureC ?? '',
+    ph: values.ph?.trim() ?? '',
+    temperatureC: values.temperatureC?.trim() ?? '',
     container: values.container as ReceiveBody['container'],
     filteredInField: values.filteredInField ?? false,
     condition: values.condition ?? '',

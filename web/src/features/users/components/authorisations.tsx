@@ -79,7 +79,11 @@ export function AllAuthorisations() {
     },
     { key: 'from', title: 'From', isNarrow: true, text: (row) => row.validFrom },
     { key: 'until', title: 'Until', isNarrow: true, text: (row) => row.validUntil },
-    { key: 'evidence', title: 'What shows it', text: (row) => row.evidence },
+    {
+      key: 'evidence',
+      title: 'What shows it',
+      cell: (row) => <div className="wide-cell">{row.evidence}</div>,
+    },
   ]
   const rows = people.data && heldBy(people.data.items)
   return (
@@ -142,7 +146,11 @@ export function AuthorisationsOf({ person }: { person: UserView }) {
         },
         { key: 'from', title: 'From', isNarrow: true, text: (row) => row.validFrom },
         { key: 'until', title: 'Until', isNarrow: true, text: (row) => row.validUntil },
-        { key: 'evidence', title: 'What shows it', text: (row) => row.evidence },
+        {
+          key: 'evidence',
+          title: 'What shows it',
+          cell: (row) => <div className="wide-cell">{row.evidence}</div>,
+        },
       ]}
       rowKey={(row) => row.id}
       empty={{ title: 'None yet', text: 'Without one this person can measure, sign and review nothing.' }}

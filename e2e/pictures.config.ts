@@ -1,0 +1,22 @@
+import { defineConfig } from '@playwright/test'
+import { chromium } from './support/browser.js'
+import { product } from './support/accounts.js'
+
+/** `npm run pictures`: every screen for each role at three widths, into the git-ignored `pictures/`, to be looked at. */
+export default defineConfig({
+  testDir: '.',
+  testMatch: /pictures\.spec\.ts$/,
+  outputDir: 'test-results/pictures',
+  fullyParallel: true,
+  workers: 2,
+  timeout: 600_000,
+  expect: { timeout: 60_000 },
+  reporter: [['list']],
+  use: {
+    ...chromium,
+    baseURL: product().url,
+    locale: 'en-GB',
+    actionTimeout: 60_000,
+    navigationTimeout: 60_000,
+  },
+})

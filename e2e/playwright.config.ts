@@ -1,0 +1,46 @@
+import { defineConfig } from '@playwright/test'
+import { chromium } from './support/browser.js'
+import { product } from './support/accounts.js'
+
+/** A machine that does much else besides: E2E_PATIENCE=4 waits four times as long before it gives up. */
+const patience = Number(process.env['E2E_PATIENCE'] ?? 1)
+
+/**
+ * Against a product that is already running: `npm test` starts one with its demonstration and says where it is.
+ * `door` shows that people can get in at all; `work` is everything else; outages.spec.ts pulls plugs and is not
+ * part of it yet.
+ */
+export default defineConfig({
+  testDir: '.',
+  outputDir: 'test-results',
+  forbidOnly: true,
+  fullyParallel: true,
+  workers: 2,
+  retries: 0,
+  // the whole way of a sample, with real signatures, PDFs and mail
+  timeout: 240_000 * patience,
+  expect: { timeout: 20_000 * patience },
+  reporter: [['list']],
+  use: {
+    ...chromium,
+    baseURL: product().url,
+    viewport: { width: 1440, height: 1000 },
+    locale: 'en-GB',
+    // by the server's clock and the laboratory's zone, never by the browser's
+    timezoneId: 'Pacific/Auckland',
+    actionTimeout: 20_000 * patience,
+    navigationTimeout: 40_000 * patience,
+    trace: 'retain-on-failure',
+    screenshot: 'only-on-failure',
+  },
+  projects: [
+    { name: 'door', testMatch: /door\.spec\.ts$/ },
+    {
+      name: 'work',
+      testMatch: /\.spec\.ts$/,
+      // written, and not yet seen through to the end: job, bad-input, people, published-iron, axe. They join as they hold.
+      testIgnore: /(door|outages|pictures|job|bad-input|people|published-iron|axe)\.spec\.ts$/,
+      dependencies: ['door'],
+    },
+  ],
+})
