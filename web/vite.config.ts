@@ -8,8 +8,6 @@ const conditions = ['source', 'module', 'browser', 'development|production']
 export default defineConfig({
   plugins: [react(), precompress()],
   resolve: { conditions },
-  // tests without a page resolve as a server does: the workspace's sources there too, built or not
-  ssr: { resolve: { conditions, externalConditions: conditions } },
   // shown on the page that says how the installation stands
   define: { 'import.meta.env.VITE_VERSION': JSON.stringify(packageJson.version) },
   server: {
@@ -44,7 +42,12 @@ export default defineConfig({
   test: {
     css: false,
     projects: [
-      { extends: true, test: { name: 'plain', include: ['src/**/*.spec.ts'], environment: 'node' } },
+      {
+        extends: true,
+        // tests without a page resolve as a server does: the workspace's sources there too, built or not
+        ssr: { resolve: { conditions, externalConditions: conditions } },
+        test: { name: 'plain', include: ['src/**/*.spec.ts'], environment: 'node' },
+      },
       {
         extends: true,
         test: {
