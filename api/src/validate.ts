@@ -12,6 +12,7 @@ const documents = new DocumentsService()
 const json = Buffer.from(`${JSON.stringify(report, null, 2)}\n`, 'utf8')
 const pdf = await documents.render(
   validationDocument(report, { laboratory: 'Run from the command line', by: 'npm run validate' }),
+  { timeLimit: 150_000 },
 )
 await documents.onApplicationShutdown()
 writeOutput(join(folder, 'validation.json'), json)

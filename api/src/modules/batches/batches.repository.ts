@@ -131,10 +131,11 @@ export class BatchesRepository {
     )
   }
 
-  async watch(trx: Trx, batchId: string, userId: string): Promise<void> {
+  /** One statement on a table without history: it needs no transaction. */
+  async watch(db: Executor, batchId: string, userId: string): Promise<void> {
     await sql`insert into batch_watchers (batch_id, user_id) values (${batchId}, ${userId})
       on conflict (batch_id, user_id) do update set seen_at = weirlight_now()
-      where batch_watchers.seen_at < weirlight_now() - interval '10 seconds'`.execute(trx)
+      where batch_watchers.seen_at < weirlight_now() - interval '10 seconds'`.execute(db)
   }
 
   async listWatchers(db: Executor, batchId: string, exceptUserId: string): Promise<string[]> {

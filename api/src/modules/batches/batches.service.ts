@@ -40,7 +40,7 @@ export class BatchesService {
   /** Opening the page tells others who is there. */
   async open(actor: Actor, id: string): Promise<BatchView> {
     const whole = await this.whole(this.db.fresh, id)
-    await this.db.unwatched((trx) => this.batches.watch(trx, id, actor.userId))
+    await this.batches.watch(this.db.fresh, id, actor.userId)
     return this.compose(this.db.fresh, { whole, assessed: assessBatch(whole), actor })
   }
 
@@ -60,12 +60,17 @@ export class BatchesService {
     }
   }
 
-  /** After work at the bench: judges the run as it is now, keeps its counts, and shows it. */
+  /**
+   * After work at the bench: judges the run as it is now, keeps its counts, and shows it. `laid` spares reading what the
+   * caller has read under the batch's lock and has not changed: everything but the readings.
+   */
   async settle(
     trx: Trx,
-    { id, state, actor }: { id: string; state: BatchStateName; actor: Actor },
+    { id, state, actor, laid }: { id: string; state: BatchStateName; actor: Actor; laid?: BatchWhole },
   ): Promise<BatchView> {
-    const whole = await this.whole(trx, id)
+    const whole = laid
+      ? { ...laid, readings: await this.positions.listReadings(trx, id) }
+      : await this.whole(trx, id)
     const assessed = assessBatch(whole)
     const version = await this.batches.settle(trx, { id, state, ...assessed.summary })
     return this.compose(trx, {

@@ -80,7 +80,7 @@ export class RunningService {
     if (planned.length === 0) return this.views.view(trx, id, actor)
     const { source, uploadId } = readings
     await this.positions.insertReadings(trx, planned, { batchId: id, readBy: actor.userId, source, uploadId })
-    return this.views.settle(trx, { id, state, actor })
+    return this.views.settle(trx, { id, state, actor, laid: whole })
   }
 
   async changePosition(

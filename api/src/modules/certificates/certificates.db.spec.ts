@@ -215,6 +215,18 @@ describe('its document', () => {
     expect((await (await manager()).call(getCertificate, params(id))).mailed).toBe(true)
   })
 
+  it('is found by the beginning of its own number and of its sample’s', async () => {
+    const { view } = await aRenderedCertificate()
+    const other = await aCertificate()
+    const agent = await manager()
+    for (const number of [view.number, view.number.toLowerCase(), view.snapshot.sample.number]) {
+      const { items } = await agent.call(listCertificates, { query: { number } })
+      expect(items.map(({ id }) => id)).toEqual([view.id])
+    }
+    const all = await agent.call(listCertificates, { query: { number: 'C-' } })
+    expect(all.items.map(({ id }) => id)).toEqual(expect.arrayContaining([view.id, other.id]))
+  })
+
   it('says on paper what the snapshot says: every result, limit, statement, rule, name, page and caution', async () => {
     const { view } = await aRenderedCertificate()
     const { bytes } = await (await manager()).file(certificatePdf, params(view.id))

@@ -34,6 +34,8 @@ export interface HistoryFilter {
   /** a number that no table knows any more is looked for as written */
   number?: string | undefined
   family?: readonly FamilyMember[] | undefined
+  /** when the family began; spares the months before it */
+  familySince?: string | undefined
 }
 
 @Injectable()
@@ -45,13 +47,30 @@ export class HistoryRepository {
     { after, limit }: { after?: readonly string[] | undefined; limit: number },
   ): Promise<HistoryEntry[]> {
     const conditions = conditionsOf(filter)
-    if (after) conditions.push(sql`(at, id) < (${after[0]}::timestamptz, ${after[1]}::bigint)`)
+    if (after) {
+      // the pair finds the place; the time alone lets PostgreSQL leave out the months that are newer
+      conditions.push(sql`at <= ${after[0]}::timestamptz`)
+      conditions.push(sql`(at, id) < (${after[0]}::timestamptz, ${after[1]}::bigint)`)
+    }
     const where = conditions.length === 0 ? sql`` : sql`where ${sql.join(conditions, sql` and `)}`
+    const order = sql`order by at desc, id desc limit ${limit}`
+    // A family's entries lie close together in time. Left to itself PostgreSQL takes them for evenly spread and walks the
+    // whole history for the page's end; the fence makes it fetch the family by its index and sort that.
+    const from = filter.family
+      ? sql`from (select * from history ${where} offset 0) family ${order}`
+      : sql`from history ${where} ${order}`
     const { rows } = await sql<HistoryEntry>`
       select id, at, to_char(at at time zone 'UTC', 'YYYY-MM-DD"T"HH24:MI:SS.US"Z"') as at_text, actor_id, actor_name,
         actor_role, action, reason, request_id, thing, thing_id, thing_number, operation, old, new
-      from history ${where} order by at desc, id desc limit ${limit}`.execute(db)
+      ${from}`.execute(db)
     return rows
+  }
+
+  /** When the first of these rows was written. */
+  async firstOf(db: Executor, members: readonly FamilyMember[]): Promise<string | undefined> {
+    const { rows } = await sql<{ first: string | null }>`
+      select min(at)::text as first from history where ${anyOf(members)}`.execute(db)
+    return rows[0]?.first ?? undefined
   }
 
   /** The first moment of a day in the laboratory's zone, and the first after it. */
@@ -103,13 +122,16 @@ function conditionsOf(filter: HistoryFilter): RawBuilder<unknown>[] {
   if (filter.action !== undefined) conditions.push(sql`action = ${filter.action}`)
   if (filter.since !== undefined) conditions.push(sql`at >= ${filter.since}::timestamptz`)
   if (filter.until !== undefined) conditions.push(sql`at < ${filter.until}::timestamptz`)
+  if (filter.familySince !== undefined) conditions.push(sql`at >= ${filter.familySince}::timestamptz`)
   if (filter.family !== undefined) {
-    const members = filter.family.map(
-      ({ thing, ids }) => sql`(thing = ${thing} and thing_id = any(${ids}::bigint[]))`,
-    )
-    conditions.push(sql`(${sql.join(members, sql` or `)})`)
+    conditions.push(anyOf(filter.family))
   } else if (filter.number !== undefined) {
     conditions.push(sql`thing_number = ${filter.number}`)
   }
   return conditions
+}
+
+function anyOf(members: readonly FamilyMember[]): RawBuilder<unknown> {
+  const each = members.map(({ thing, ids }) => sql`(thing = ${thing} and thing_id = any(${ids}::bigint[]))`)
+  return sql`(${sql.join(each, sql` or `)})`
 }

@@ -22,6 +22,16 @@ import { HistoryRepository, type HistoryEntry, type HistoryFilter } from './hist
 type Asked = QueryOf<typeof exportHistory>
 
 const EXPORT_PAGE = 2000
+/** the tables whose rows people know by a number of their own */
+const NUMBERED: ReadonlySet<string> = new Set([
+  'batches',
+  'samples',
+  'calibrations',
+  'alerts',
+  'certificates',
+  'material_lots',
+  'instruments',
+])
 const HEADER = [
   'id',
   'at (UTC)',
@@ -102,12 +112,16 @@ export class HistoryService {
     const last = to && (await this.history.boundsOf(this.db.read, to))
     const wanted = number?.trim().toUpperCase() || undefined
     const family = wanted === undefined ? [] : await this.families.find(this.db.read, wanted)
+    // whatever belongs to a numbered thing was written after the thing itself
+    const numbered = family.filter(({ thing }) => NUMBERED.has(thing))
+    const familySince = numbered.length === 0 ? undefined : await this.history.firstOf(this.db.read, numbered)
     return {
       ...rest,
       since: first ? first.begins : undefined,
       until: last ? last.ends : undefined,
       number: wanted,
       family: family.length > 0 ? family : undefined,
+      familySince,
     }
   }
 }

@@ -23,6 +23,9 @@ import { renderValidation } from './jobs/validation.jobs.js'
 import { ValidationRepository } from './validation.repository.js'
 
 type Run = AnswerOf<typeof runValidation>
+/** some two thousand comparisons on a hundred pages: seconds on an idle machine, and the job may take three minutes */
+const LAYOUT_TIME = 150_000
+
 type Row = NonNullable<Awaited<ReturnType<ValidationRepository['find']>>>
 
 /** The laboratory's own evidence that the calculations are right: run by the QA manager, kept, never changed. */
@@ -45,7 +48,7 @@ export class ValidationService implements OnApplicationShutdown {
 
   async run(actor: Actor): Promise<Run> {
     const report = await this.compute()
-    const sha256 = createHash('sha256').update(JSON.stringify(report)).digest('hex')
+    const sha256 = createHash('sha256').update(reportFile(report)).digest('hex')
     return this.db.transaction(actor, 'validation.run', null, async (trx) => {
       const id = await this.runs.insert(trx, { byId: actor.userId, report, sha256 })
       await this.jobs.enqueue(trx, renderValidation, { id })
@@ -65,7 +68,7 @@ export class ValidationService implements OnApplicationShutdown {
       laboratory: name,
       by: row.byName,
     })
-    const pdf = await this.documents.render(definition)
+    const pdf = await this.documents.render(definition, { timeLimit: LAYOUT_TIME })
     await this.db.unwatched((trx) => this.runs.keepPdf(trx, { id, pdf }))
   }
 
@@ -84,8 +87,11 @@ export class ValidationService implements OnApplicationShutdown {
   async json(id: string): Promise<FileAnswer> {
     const kept = await this.runs.report(this.db.read, id)
     if (!kept) throw notFound('validation report')
-    const content = Buffer.from(JSON.stringify(kept.report, null, 2), 'utf8')
-    return { content, mediaType: 'application/json', filename: `validation-${id}.json` }
+    return {
+      content: reportFile(kept.report),
+      mediaType: 'application/json',
+      filename: `validation-${id}.json`,
+    }
   }
 
   async onApplicationShutdown(): Promise<void> {
@@ -96,6 +102,15 @@ export class ValidationService implements OnApplicationShutdown {
     this.pool ??= openWorkerPool(workerFile(import.meta.url, 'validation-worker'))
     return (await this.pool.run({ now: this.clock.now().toISOString() })) as ValidationReport
   }
+}
+
+/** The file that is given out, byte for byte what the hash was taken of: the database keeps no order of keys, so they are sorted. */
+function reportFile(report: unknown): Buffer {
+  const sorted = (_: string, value: unknown) =>
+    typeof value === 'object' && value !== null && !Array.isArray(value)
+      ? Object.fromEntries(Object.entries(value).sort(([a], [b]) => (a < b ? -1 : 1)))
+      : value
+  return Buffer.from(JSON.stringify(report, sorted, 2), 'utf8')
 }
 
 function toRun(row: Row): Run {

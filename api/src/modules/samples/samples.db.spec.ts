@@ -330,6 +330,13 @@ describe('the register', () => {
     expect(second.items.map(({ number }) => number)).toEqual(numbers.slice(2, 4))
     const byNumber = await agent.call(listSamples, { query: { number: numbers[0] ?? '' } })
     expect(byNumber.items.map(({ number }) => number)).toEqual([numbers[0]])
+    // the end of a number, and its beginning in small letters, find it as well
+    for (const number of [numbers[0]?.slice(-5) ?? '', numbers[0]?.toLowerCase() ?? '']) {
+      const found = await agent.call(listSamples, { query: { number, clientId: point.clientId } })
+      expect(found.items.map((item) => item.number)).toEqual([numbers[0]])
+    }
+    const begun = await agent.call(listSamples, { query: { number: 's-', clientId: point.clientId } })
+    expect(begun.items.map(({ number }) => number)).toEqual(numbers)
     expect((await agent.refused(listSamples, { query: { after: 'nonsense' } })).code).toBe('invalid-input')
     expect((await agent.refused(getSample, { params: { id: '999999' } })).code).toBe('not-found')
   })

@@ -33,7 +33,7 @@ export class SamplesRepository {
         ${filter.state === undefined ? sql`` : sql`and s.state = ${filter.state}`}
         ${filter.clientId === undefined ? sql`` : sql`and s.client_id = ${filter.clientId}`}
         ${filter.pointId === undefined ? sql`` : sql`and s.sampling_point_id = ${filter.pointId}`}
-        ${filter.number === undefined ? sql`` : sql`and s.number ilike ${`%${escapeLike(filter.number)}%`}`}
+        ${filter.number === undefined ? sql`` : numberLike(filter.number)}
       order by s.id desc limit ${filter.limit + 1}`.execute(db)
     return rows
   }
@@ -210,6 +210,13 @@ export class SamplesRepository {
       group by m.id order by m.title, m.id`.execute(db)
     return rows
   }
+}
+
+/** From its first letter on, a number is found by an index; a part of one only by reading every number. */
+function numberLike(number: string) {
+  return /^s-/i.test(number)
+    ? sql`and s.number like ${`${escapeLike(number.toUpperCase())}%`}`
+    : sql`and s.number ilike ${`%${escapeLike(number)}%`}`
 }
 
 function escapeLike(text: string): string {

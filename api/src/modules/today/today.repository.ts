@@ -72,7 +72,7 @@ export class TodayRepository {
         eb
           .selectFrom('results')
           .whereRef('results.batchId', '=', 'batches.id')
-          .where('results.verdict', '=', 'above')
+          .where('results.verdict', 'in', ['above', 'conditional-above'])
           .select((count) => count.fn.countAll<string>().as('n'))
           .as('above'),
         eb

@@ -10,9 +10,10 @@ const TIME_LIMIT = 30_000
 export class DocumentsService implements OnApplicationShutdown {
   private pool: Piscina | undefined
 
-  async render(definition: DocumentDefinition): Promise<Buffer> {
+  /** `timeLimit` in milliseconds, for a document of hundreds of pages */
+  async render(definition: DocumentDefinition, { timeLimit = TIME_LIMIT } = {}): Promise<Buffer> {
     this.pool ??= openWorkerPool(workerFile(import.meta.url, 'pdf-worker'))
-    const bytes = (await this.pool.run(definition, { signal: AbortSignal.timeout(TIME_LIMIT) })) as Uint8Array
+    const bytes = (await this.pool.run(definition, { signal: AbortSignal.timeout(timeLimit) })) as Uint8Array
     return Buffer.from(bytes.buffer, bytes.byteOffset, bytes.byteLength)
   }
 
