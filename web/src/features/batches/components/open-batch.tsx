@@ -68,7 +68,7 @@ export function OpenBatch({ methodId: asked }: { methodId: string }) {
         controlLotId: values.controlLotId ?? null,
         duplicateOf: values.duplicateOf ?? null,
         spikeOf: values.spikeOf ?? null,
-        spikeAdded: values.spikeOf ? (values.spikeAdded ?? '') : null,
+        spikeAdded: values.spikeOf && values.spikeAdded ? values.spikeAdded : null,
         colourStartedAt: values.colourStartedAt || null,
         reagentLotIds: values.reagentLotIds ?? [],
         note: values.note ?? '',
@@ -143,7 +143,12 @@ function BatchFields({ form, methodId, waiting }: BatchFieldsProps) {
   useEffect(() => {
     if (!calibration.data) return
     const level = middleLevel(calibration.data)
-    antForm.setFieldsValue({ verificationConcentration: level, controlConcentration: level })
+    antForm.setFieldsValue({
+      verificationConcentration: level,
+      controlConcentration: level,
+      // another reagent lot asks for another calibration: those it was made with are proposed
+      reagentLotIds: calibration.data.reagentLots.map((lot) => lot.id),
+    })
   }, [antForm, calibration.data])
 
   if (inForce?.length === 0) {
@@ -197,7 +202,12 @@ function BatchFields({ form, methodId, waiting }: BatchFieldsProps) {
       </Box>
       <Box title="Read against">
         <div className="set-up">
-          <Form.Item name="calibrationId" label="Calibration in force" className="wide" required>
+          <Form.Item
+            name="calibrationId"
+            label="Calibration in force"
+            className="wide"
+            rules={[{ required: true, message: 'Choose the calibration that the samples are read against.' }]}
+          >
             <ChoiceSelect
               choices={(inForce ?? []).map((row) => ({
                 value: row.id,

@@ -110,7 +110,11 @@ export function StartCalibration({ methodId: asked }: { methodId: string }) {
               >
                 <Box title="Instrument and cell">
                   <div className="set-up">
-                    <Form.Item name="instrumentId" label="Instrument" required>
+                    <Form.Item
+                      name="instrumentId"
+                      label="Instrument"
+                      rules={[{ required: true, message: 'Choose the instrument.' }]}
+                    >
                       <ChoiceSelect choices={instrumentChoices(stock.instruments, today())} />
                     </Form.Item>
                     <Form.Item

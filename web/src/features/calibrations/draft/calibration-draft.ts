@@ -38,7 +38,12 @@ export const CONCENTRATION = 'concentration'
 export const serverKey = (standardId: string) => `s${standardId}`
 export const idInKey = (key: string) => /^s(\d+)$/.exec(key)?.[1] ?? null
 
+/** readings of a standard before the first one is entered: three, as most methods have it */
+const FIRST_REPLICATES = 3
+
 export function draftOf(view: CalibrationView, keyOf = serverKey): CalibrationDraft {
+  const isUnread = view.standards.every((standard) => standard.readings.length === 0)
+  const least = isUnread ? FIRST_REPLICATES : 1
   return {
     instrumentId: view.instrumentId,
     cellPathCm: view.cellPathCm,
@@ -52,7 +57,7 @@ export function draftOf(view: CalibrationView, keyOf = serverKey): CalibrationDr
     standards: view.standards
       .toSorted((a, b) => a.position - b.position)
       .map((standard) => {
-        const last = Math.max(1, ...standard.readings.map((reading) => reading.replicate))
+        const last = Math.max(least, ...standard.readings.map((reading) => reading.replicate))
         const readings = Array.from({ length: last }, (_, index) => textAt(standard.readings, index + 1))
         return {
           key: keyOf(standard.id),

@@ -32,7 +32,7 @@ function lotLabel(lot: MaterialRow): string {
   return `${lot.number} · ${lot.name}${strength}, to ${lot.expiresOn}`
 }
 
-/** Lots to choose from, the usable ones first, the one that runs out first at the head of them. */
+/** Lots to choose from, the usable ones first, the kinds in the order asked for, what runs out first at their head. */
 export function lotChoices(given: {
   lots: readonly MaterialRow[]
   kinds: readonly MaterialRow['kind'][]
@@ -45,7 +45,9 @@ export function lotChoices(given: {
     .map((lot) => ({ lot, why: whyNotLot(lot, today) }))
     .toSorted(
       (a, b) =>
-        Number(a.why !== null) - Number(b.why !== null) || a.lot.expiresOn.localeCompare(b.lot.expiresOn),
+        Number(a.why !== null) - Number(b.why !== null) ||
+        kinds.indexOf(a.lot.kind) - kinds.indexOf(b.lot.kind) ||
+        a.lot.expiresOn.localeCompare(b.lot.expiresOn),
     )
     .map(({ lot, why }) => ({ value: lot.id, label: lotLabel(lot), why }))
 }

@@ -83,7 +83,7 @@ export function ReceiveForm({ first, isNext, onReceived }: ReceiveFormProps) {
 function WhatItIs() {
   return (
     <Box title="What it is">
-      <div className="form-grid">
+      <div className="form-row">
         <Form.Item
           name="purpose"
           label="Purpose"
@@ -121,13 +121,15 @@ function WhenAndWho() {
 function HowItCame() {
   return (
     <Box title="How it came">
-      <div className="form-grid">
+      <div className="form-row">
         <Form.Item name="preservation" label="Preserved with" required>
           <Radio.Group options={PRESERVATIONS} optionType="button" buttonStyle="solid" />
         </Form.Item>
         <Form.Item name="container" label="Container" required>
           <Radio.Group options={CONTAINERS} optionType="button" buttonStyle="solid" />
         </Form.Item>
+      </div>
+      <div className="form-grid">
         <Form.Item name="ph" label="pH, as read" extra="Empty when it was not measured.">
           <DecimalInput />
         </Form.Item>

@@ -12,7 +12,9 @@ interface WhereFromProps {
 /** Client and point, found by code or name: typed, scanned or looked for. */
 export function WhereFrom({ isNext, moveOn }: WhereFromProps) {
   const form = Form.useFormInstance()
-  const clientId = Form.useWatch<string | undefined>('clientId', form) ?? ''
+  // the first time it is drawn the form knows already what the watch does not
+  const watched = Form.useWatch<string | undefined>('clientId', form)
+  const clientId = watched ?? (form.getFieldValue('clientId') as string | undefined) ?? ''
   const clients = useQuery(clientsQuery)
   const client = useQuery({ ...clientQuery(clientId), enabled: clientId !== '' })
   const point = useRef<RefSelectProps>(null)
