@@ -196,6 +196,7 @@ test('the receiving form: times in the wrong order, a decimal comma, nothing cho
 
 async function fillForm(page: Page, zone: string): Promise<void> {
   await page.getByRole('combobox', { name: 'Client' }).fill('AV · Ambry Vale Rural Water')
+  await expect(page.getByTitle('AV · Ambry Vale Rural Water').first()).toBeVisible()
   await page.keyboard.press('Enter')
   const point = page.getByRole('combobox', { name: 'Sampling point' })
   await expect(point).toBeEnabled()
