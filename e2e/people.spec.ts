@@ -130,6 +130,6 @@ test('nobody signs their own calibration: not on the page, not past it', async (
     params: { id: submitted.id },
     body: { version: submitted.version, passphrase: manager.passphrase, justification: 'My own.' },
   })
-  expect(refused.status).toBe(409)
+  expect(refused.status).toBe(403)
   expect(refused.text).toContain('somebody else must sign it')
 })

@@ -101,6 +101,8 @@ describe('SaveQueue', () => {
     await vi.runAllTimersAsync()
     expect(save).toHaveBeenCalledExactlyOnceWith([entry('2', '0.2')])
     expect(queue.isSettled).toBe(false)
+    expect(queue.stateOf('1', '1')).toBe('held')
+    expect(queue.textOf('1', '1')).toBe('')
   })
 })
 

@@ -10,7 +10,8 @@ export interface Entry {
   columnKey: string
   text: string
 }
-export type EntryState = 'waiting' | 'saving' | 'saved' | 'failed'
+/** 'held' cannot be sent as it is (no number, say) and waits for the person, also over a reload */
+export type EntryState = 'waiting' | 'held' | 'saving' | 'saved' | 'failed'
 
 export interface QueueCell extends Entry {
   state: EntryState
@@ -21,7 +22,7 @@ export interface SaveQueueOptions<E extends Entry> {
   save: (entries: E[]) => Promise<unknown>
   /** the entry a refusal's path belongs to, e.g. `readings.3.absorbance` → index 3 */
   indexOf?: (path: string) => number | null
-  /** an entry that would be refused is kept and not sent */
+  /** an entry that would be refused is held: kept and not sent */
   isReady?: (entry: E) => boolean
   delayMs?: number
   retryMs?: number
@@ -45,7 +46,7 @@ export class SaveQueue<E extends Entry> {
   version = 0
 
   constructor(private options: SaveQueueOptions<E>) {
-    for (const entry of options.kept ?? []) this.set(entry, 'waiting')
+    for (const entry of options.kept ?? []) this.set(entry)
     if (this.cells.size > 0) this.schedule(0)
   }
 
@@ -60,7 +61,7 @@ export class SaveQueue<E extends Entry> {
   }
 
   put(entries: readonly E[]): void {
-    for (const entry of entries) this.set(entry, 'waiting')
+    for (const entry of entries) this.set(entry)
     this.changed()
     this.schedule(this.options.delayMs ?? 600)
   }
@@ -109,23 +110,15 @@ export class SaveQueue<E extends Entry> {
     clearTimeout(this.timer)
   }
 
-  forget(): void {
-    clearTimeout(this.timer)
-    this.cells.clear()
-    this.changed()
-  }
-
   private open() {
     return [...this.cells.values()].filter((cell) => cell.state !== 'saved')
   }
   private ready() {
-    const { isReady } = this.options
-    return [...this.cells.values()].filter(
-      (cell) => cell.state === 'waiting' && (isReady === undefined || isReady(cell.entry)),
-    )
+    return [...this.cells.values()].filter((cell) => cell.state === 'waiting')
   }
-  private set(entry: E, state: EntryState) {
-    this.cells.set(cellKey(entry.rowKey, entry.columnKey), { entry, state })
+  private set(entry: E) {
+    const isReady = this.options.isReady?.(entry) ?? true
+    this.cells.set(cellKey(entry.rowKey, entry.columnKey), { entry, state: isReady ? 'waiting' : 'held' })
   }
   private schedule(delay: number) {
     clearTimeout(this.timer)

@@ -1,4 +1,4 @@
-import { useEffect, useState, useSyncExternalStore } from 'react'
+import { useEffect, useMemo, useState, useSyncExternalStore } from 'react'
 import { SaveQueue, savedSentence, type Entry, type SaveQueueOptions } from './save-queue'
 import { useSession } from './session'
 
@@ -70,24 +70,29 @@ export function useSaveQueue<E extends Entry>(options: Options<E>) {
   }, [queue])
   useSyncExternalStore(queue.subscribe, () => queue.version)
 
+  const moves = useMemo(
+    () => ({
+      put: (entries: readonly E[]) => queue.put(entries),
+      stateOf: (rowKey: string, columnKey: string) => queue.stateOf(rowKey, columnKey),
+      errorOf: (rowKey: string, columnKey: string) => queue.errorOf(rowKey, columnKey),
+      textOf: (rowKey: string, columnKey: string) => queue.textOf(rowKey, columnKey),
+      entries: () => queue.entries(),
+      drop: (rowKey: string, columnKey: string) => queue.drop(rowKey, columnKey),
+      settledNow: () => queue.isSettled,
+      flush: () => queue.flush(),
+    }),
+    [queue],
+  )
   const isOffline = queue.problem?.code === 'offline'
   return {
-    put: (entries: readonly E[]) => queue.put(entries),
-    stateOf: (rowKey: string, columnKey: string) => queue.stateOf(rowKey, columnKey),
-    errorOf: (rowKey: string, columnKey: string) => queue.errorOf(rowKey, columnKey),
-    textOf: (rowKey: string, columnKey: string) => queue.textOf(rowKey, columnKey),
-    entries: () => queue.entries(),
-    drop: (rowKey: string, columnKey: string) => queue.drop(rowKey, columnKey),
-    settledNow: () => queue.isSettled,
-    flush: () => queue.flush(),
-    forget: () => queue.forget(),
+    ...moves,
     isSettled: queue.isSettled,
     isOffline,
     problem: queue.problem,
     summary: savedSentence({
       saved: savedCount,
       open: queue.count('waiting') + queue.count('saving'),
-      failed: queue.count('failed'),
+      failed: queue.count('failed') + queue.count('held'),
       isOffline,
       what,
     }),

@@ -4,7 +4,15 @@ import { useCallback, useEffect, useRef, useState } from 'react'
 import { call, invalidate, serverNow, useSaveQueue } from '../../../lib'
 import type { CellState } from '../../../ui/run-grid'
 import { batchQuery, type BatchView } from '../api/batch-queries'
-import { cellName, readingIn, rowOf, type Cell, type Reading, type ReadingEntry } from '../run-sheet/cells'
+import {
+  cellName,
+  isReading,
+  readingIn,
+  rowOf,
+  type Cell,
+  type Reading,
+  type ReadingEntry,
+} from '../run-sheet/cells'
 import { liveBatch } from '../run-sheet/live-batch'
 import { sortAfterStale, sortCommit, type Commit, type SortedCommit } from '../run-sheet/sort-commit'
 
@@ -62,7 +70,12 @@ export function useRunSheet(batch: BatchView) {
     },
     [batch.id, client, take],
   )
-  const queue = useSaveQueue<ReadingEntry>({ name: `batch-${batch.id}`, save, savedCount })
+  const queue = useSaveQueue<ReadingEntry>({
+    name: `batch-${batch.id}`,
+    save,
+    savedCount,
+    isReady: isReading,
+  })
   const { problem } = queue
 
   const forgetTyped = useCallback((cells: readonly Cell[]) => {
@@ -73,28 +86,35 @@ export function useRunSheet(batch: BatchView) {
     })
   }, [])
 
-  // the server refused some entries: see whether somebody else filled their cells, and send the others again
-  const mended = useRef<unknown>(null)
   const { entries, drop, put } = queue
-  useEffect(() => {
-    if (!problem || isWorthWaiting(problem.code) || mended.current === problem) return
-    mended.current = problem
-    const mend = async () => {
-      const fresh = await client.fetchQuery({ ...batchQuery(batch.id), staleTime: 0 })
-      const failed = entries().filter((each) => each.state === 'failed')
-      const sorted = sortAfterStale(
-        failed.map((each) => each.entry),
-        fresh,
-      )
+  /** What the batch says about the entries the server refused: it has them already, or somebody else filled their cells. */
+  const explain = useCallback(
+    (fresh: BatchView, refused: readonly ReadingEntry[]) => {
+      const sorted = sortAfterStale(refused, fresh)
       const answered = [...sorted.same, ...sorted.clashes.map((each) => each.cell)]
       for (const cell of answered) drop(cell.rowKey, cell.columnKey)
       setClashes((current) => withClashes(current, sorted.clashes))
+      return { answered: answered.length, again: sorted.again }
+    },
+    [drop],
+  )
+
+  // after a refusal: explain it by the batch as it is now, and send the others again
+  const mended = useRef<unknown>(null)
+  useEffect(() => {
+    if (!problem || isWorthWaiting(problem.code) || mended.current === problem) return
+    mended.current = problem
+    const refused = refusedIn(entries())
+    const mend = async () => {
+      const fresh = await client.fetchQuery({ ...batchQuery(batch.id), staleTime: 0 })
+      const { answered, again } = explain(fresh, refused)
       // where nothing explains the refusal, entries stay marked rather than go in circles
-      if (problem.code === 'stale' && answered.length > 0 && sorted.again.length > 0) put(sorted.again)
+      if (problem.code === 'stale' && answered > 0 && again.length > 0) put(again)
     }
-    // without a connection the cells simply stay marked
+    // without a connection the cells stay marked, until the batch is read again
     mend().catch(() => undefined)
-  }, [problem, client, batch.id, entries, drop, put])
+  }, [problem, client, batch.id, entries, explain, put])
+  useEffect(() => void explain(batch, refusedIn(entries())), [batch, entries, explain])
 
   const valueOf = (rowKey: string, columnKey: string): string => {
     const cell = { rowKey, columnKey }
@@ -116,7 +136,8 @@ export function useRunSheet(batch: BatchView) {
         error: `${clash.theirs.readBy.name} entered ${clash.theirs.absorbance} meanwhile: choose above.`,
       }
     }
-    return { saved: queue.stateOf(rowKey, columnKey), error: queue.errorOf(rowKey, columnKey) }
+    const state = queue.stateOf(rowKey, columnKey)
+    return { saved: state === 'held' ? 'failed' : state, error: queue.errorOf(rowKey, columnKey) }
   }
 
   const onChange = (changes: readonly Commit[]) => {
@@ -144,8 +165,14 @@ export function useRunSheet(batch: BatchView) {
       batch: latest.current,
       seen: (cell) => seen.get(cellName(cell)),
     })
-    for (const cell of sorted.settled) queue.drop(cell.rowKey, cell.columnKey)
-    if (sorted.fresh.length > 0) queue.put(sorted.fresh)
+    const answered = [...sorted.settled, ...sorted.emptied, ...sorted.clashes.map((each) => each.cell)]
+    for (const cell of answered) queue.drop(cell.rowKey, cell.columnKey)
+    for (const cell of sorted.corrections) {
+      if (queue.stateOf(cell.rowKey, cell.columnKey) === 'held') queue.drop(cell.rowKey, cell.columnKey)
+    }
+    // what is no number is kept on this computer, so that a reload does not lose it
+    const entries = [...sorted.fresh, ...sorted.invalid]
+    if (entries.length > 0) queue.put(entries)
     setClashes((current) => withClashes(current, sorted.clashes))
     setCorrections((current) => [...current, ...sorted.corrections])
     setNotices(
@@ -153,12 +180,7 @@ export function useRunSheet(batch: BatchView) {
         ? ['A saved reading cannot be emptied: correct it, or say in the note what happened.']
         : [],
     )
-    forgetTyped([
-      ...sorted.fresh,
-      ...sorted.settled,
-      ...sorted.emptied,
-      ...sorted.clashes.map((each) => each.cell),
-    ])
+    forgetTyped([...sorted.fresh, ...answered])
   }
 
   const correct = (reason: string) => {
@@ -218,6 +240,9 @@ export function useRunSheet(batch: BatchView) {
 export type RunSheet = ReturnType<typeof useRunSheet>
 
 const isWorthWaiting = (code: string) => code === 'offline' || code === 'unavailable' || code === 'signed-out'
+
+const refusedIn = (entries: readonly { entry: ReadingEntry; state: string }[]) =>
+  entries.filter((each) => each.state === 'failed').map((each) => each.entry)
 
 function withClashes(current: readonly Clash[], found: readonly Clash[]): readonly Clash[] {
   const names = new Set(found.map((each) => cellName(each.cell)))

@@ -33,6 +33,9 @@ export function readingProblem(text: string): string | null {
   return absorbanceText.safeParse(text).error?.issues[0]?.message ?? null
 }
 
+/** whether an entry can be sent at all */
+export const isReading = (entry: { text: string }) => readingProblem(entry.text) === null
+
 /** How a position is called where it is spoken of alone. */
 export function positionName(
   row: Pick<PositionView, 'position' | 'label' | 'sampleNumber' | 'kind'>,

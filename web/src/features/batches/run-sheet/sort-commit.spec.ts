@@ -57,7 +57,7 @@ describe('what an entry does to the record', () => {
     expect(sorted.settled).toHaveLength(1)
     expect(sorted.corrections.map((each) => each.text)).toEqual(['0.0320'])
     expect(sorted.fresh).toMatchObject([{ text: '0.0157', source: 'pasted' }])
-    expect(sorted.invalid).toEqual([{ rowKey: '202', columnKey: '2' }])
+    expect(sorted.invalid).toMatchObject([{ rowKey: '202', columnKey: '2', text: 'n/a' }])
   })
 })
 

@@ -1,5 +1,5 @@
 import type { BatchView } from '../api/batch-queries'
-import { readingIn, readingProblem, rowOf, type Cell, type ReadingEntry, type Reading } from './cells'
+import { isReading, readingIn, rowOf, type Cell, type ReadingEntry, type Reading } from './cells'
 
 export interface Commit extends Cell {
   text: string
@@ -18,7 +18,7 @@ export interface SortedCommit {
   /** a saved reading cannot be emptied; it gets its value back */
   emptied: Cell[]
   /** no number: stays in the cell, marked */
-  invalid: Cell[]
+  invalid: ReadingEntry[]
 }
 
 /**
@@ -44,12 +44,12 @@ export function sortCommit(given: {
     const saved = readingIn(rowOf(given.batch, rowKey), columnKey)
     if (text === (saved?.absorbance ?? '')) sorted.settled.push(cell)
     else if (text === '') sorted.emptied.push(cell)
-    else if (readingProblem(text)) sorted.invalid.push(cell)
     else {
       const seen = given.seen(cell)
       const savedId = saved?.id ?? null
       const entry: ReadingEntry = { ...cell, text, supersedes: savedId, source: how }
-      if (saved && seen !== undefined && seen !== savedId)
+      if (!isReading(entry)) sorted.invalid.push(entry)
+      else if (saved && seen !== undefined && seen !== savedId)
         sorted.clashes.push({ cell, mine: text, theirs: saved })
       else if (saved) sorted.corrections.push({ ...entry, before: saved.absorbance })
       else sorted.fresh.push(entry)
