@@ -97,6 +97,22 @@ describe('jobs', () => {
       .toEqual([1, 2])
   })
 
+  it('follow one another without a rest between them', async () => {
+    const words = Array.from({ length: 30 }, (_, n) => `burst ${n}`)
+    const started = Date.now()
+    await at.database.db.transaction(SYSTEM, 'test.job', null, async (trx) => {
+      for (const word of words) await at.get(JobsService).enqueue(trx, echo, { word })
+    })
+    await expect
+      .poll(() => seen.filter(({ word }) => word.startsWith('burst')).length, {
+        timeout: 14_000,
+        interval: 20,
+      })
+      .toBe(30)
+    // at a poll of half a second each they would take fifteen
+    expect(Date.now() - started).toBeLessThan(10_000)
+  })
+
   it('are shared by two processes, each run once', async () => {
     const second = await createTestApp({ imports: [EchoModule], isWorker: true, database: at.database })
     try {

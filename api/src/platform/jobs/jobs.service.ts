@@ -130,7 +130,12 @@ export class JobsService implements OnApplicationBootstrap, BeforeApplicationShu
 
   private async work({ job, run }: FoundHandler): Promise<void> {
     for (let n = 0; n < job.concurrency; n += 1) {
-      const workerId = await this.boss.work<Envelope>(
+      let workerId: string | undefined
+      // more may wait: without this the worker would rest between two jobs until its next poll
+      const goOn = () => {
+        if (workerId !== undefined) this.boss.notifyWorker(workerId)
+      }
+      workerId = await this.boss.work<Envelope>(
         job.name,
         {
           batchSize: 1,
@@ -138,10 +143,14 @@ export class JobsService implements OnApplicationBootstrap, BeforeApplicationShu
           includeMetadata: true,
         },
         async (batch: PgBoss.JobWithMetadata<Envelope>[]) => {
-          for (const one of batch) await this.runOne({ job, run }, one)
+          try {
+            for (const one of batch) await this.runOne({ job, run }, one)
+          } finally {
+            if (batch.length > 0) goOn()
+          }
         },
       )
-      this.bell.on(job.name, () => this.boss.notifyWorker(workerId))
+      this.bell.on(job.name, goOn)
     }
   }
 
