@@ -145,7 +145,7 @@ function toLine({
     resultId: row.id,
     determination: determinationName(row.analyte, row.form),
     method: more?.code ? `${definition?.title ?? row.methodTitle}` : row.methodTitle,
-    edition: definition ? `${definition.source}, ${more?.edition ?? definition.edition}` : '',
+    edition: definition ? withEditions(definition.source, more?.edition ?? definition.edition) : '',
     text: row.text,
     uncertaintyText: row.uncertaintyText ?? '',
     unit: showUnit(row.unit),
@@ -214,4 +214,11 @@ function notesFor({ lines, facts }: { lines: readonly Line[]; facts: Facts }): s
     ...(facts.clientConsent === '' ? [] : [`The client asked in writing to proceed: ${facts.clientConsent}`]),
     ...lines.flatMap((line) => line.flags.map((flag) => `${line.determination}: ${flag}.`)),
   ]
+}
+
+/** “HJ/T 345; ISO 6332” of “2007; 1988” is “HJ/T 345 (2007); ISO 6332 (1988)”. */
+export function withEditions(sources: string, editions: string): string {
+  const [names, years] = [sources.split('; '), editions.split('; ')]
+  if (names.length === 1 || names.length !== years.length) return `${sources}, ${editions}`
+  return names.map((name, index) => `${name} (${years[index] ?? ''})`).join('; ')
 }
