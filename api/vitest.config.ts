@@ -39,8 +39,11 @@ export default defineConfig({
           include: ['src/**/*.db.spec.ts'],
           globalSetup: ['src/testing/template-database.ts'],
           pool: 'forks',
-          testTimeout: 20_000,
-          hookTimeout: 60_000,
+          // loading the application once for each worker, not for each file; they wait for PostgreSQL much of the time
+          isolate: false,
+          maxWorkers: 3,
+          testTimeout: 60_000,
+          hookTimeout: 120_000,
         },
       },
     ],

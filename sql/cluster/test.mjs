@@ -55,22 +55,16 @@ const runSuite = async (suite) => {
   return counts.failed === 0
 }
 
-/** Two at a time: the machines this runs on have two cores, and each suite waits now and then. */
-const runTogether = async (suites) => {
-  const queue = [...suites]
-  const lane = async () => {
-    while (queue.length > 0) await runSuite(queue.shift())
-  }
-  await Promise.all([lane(), lane()])
+const runAll = async (suites) => {
+  for (const suite of suites) await runSuite(suite)
 }
 
 const failedSuite = (name, why) => ({ name, run: async () => ({ counts: oneCheck(1), output: `${why}\n` }) })
 
-/** The product with its demo laboratory, for the browser and for the checks of its database. */
-const runOnProduct = async ({ wants, rest, folder, home, cluster, watchdog, chromium }) => {
-  let product
+/** The built product with its demo laboratory, or why there is none. */
+const openProduct = async ({ home, cluster, watchdog }) => {
   try {
-    product = await startProductOn({
+    const product = await startProductOn({
       cluster,
       home,
       folder: join(home, 'product'),
@@ -79,9 +73,17 @@ const runOnProduct = async ({ wants, rest, folder, home, cluster, watchdog, chro
       watchdog,
       onDeath: ({ name, lastLines }) => say(red(`${name} ended by itself:\n${lastLines}`)),
     })
+    return { product }
   } catch (error) {
     const why = error instanceof Refusal ? error.message : (error.stack ?? String(error))
-    if (wants('browser')) await runSuite(failedSuite('browser tests', `The product did not start.\n${why}`))
+    return { why: `The product did not start.\n${why}` }
+  }
+}
+
+/** The browser, and the checks of the database that it leaves behind. */
+const runOnProduct = async ({ product, why, wants, rest, folder, cluster, chromium }) => {
+  if (!product) {
+    if (wants('browser')) await runSuite(failedSuite('browser tests', why))
     if (wants('checks')) await runSuite(failedSuite('checks of the seeded database', 'Not run: see above.'))
     return
   }
@@ -116,16 +118,23 @@ const work = async () => {
   if (!parts) undo.push(() => rmSync(home, { recursive: true, force: true }))
   const folder = reportFolder(home)
 
-  await runTogether([
-    ...(wants('db') ? [suiteGroups.database({ folder, rest, cluster: parts.cluster })] : []),
-    ...(wants('lint') ? suiteGroups.lint : []),
-    ...(wants('types') ? suiteGroups.types : []),
-    ...(wants('small') ? suiteGroups.small({ folder, rest }) : []),
+  // two lanes for two cores; the browser tests come after both, alone
+  const openWhatIsNeeded = async () => {
+    if (wants('db')) await runSuite(suiteGroups.database({ folder, rest, cluster: parts.cluster }))
+    if (!wants('build') && !needsProduct) return undefined
+    const isBuilt = await runSuite(suiteGroups.build)
+    if (!needsProduct) return undefined
+    return isBuilt ? openProduct({ ...parts, watchdog }) : { why: 'Not run: the build failed.' }
+  }
+  const [opened] = await Promise.all([
+    openWhatIsNeeded(),
+    runAll([
+      ...(wants('lint') ? suiteGroups.lint : []),
+      ...(wants('types') ? suiteGroups.types : []),
+      ...(wants('small') ? suiteGroups.small({ folder, rest }) : []),
+    ]),
   ])
-  const isBuildWanted = wants('build') || needsProduct
-  const isBuilt = isBuildWanted && (await runSuite(suiteGroups.build))
-  if (needsProduct && isBuilt) await runOnProduct({ ...parts, wants, rest, folder, watchdog, chromium })
-  if (needsProduct && !isBuilt) await runSuite(failedSuite('browser tests', 'Not run: the build failed.'))
+  if (opened) await runOnProduct({ ...opened, ...parts, wants, rest, folder, chromium })
 
   summary()
   say(lastLine(total()))
