@@ -16,6 +16,8 @@ export default defineConfig({
     ...chromium,
     baseURL: product().url,
     locale: 'en-GB',
+    // a date in the browser's zone instead of the laboratory's shows itself
+    timezoneId: 'Pacific/Auckland',
     actionTimeout: 60_000,
     navigationTimeout: 60_000,
   },

@@ -2,7 +2,7 @@ import { ROLES } from '@weirlight/shared/permissions'
 import type { Page } from '@playwright/test'
 import { accountOf } from './support/accounts.js'
 import { areaOf, areasOf, findThings, publicScreens, screensOf, type Screen } from './support/screens.js'
-import { settled } from './support/settled.js'
+import { drawn, settled } from './support/settled.js'
 import { expect, test } from './support/test.js'
 
 const WIDTHS = [
@@ -21,10 +21,7 @@ async function photograph(page: Page, given: { role: string; screens: readonly S
       await page.setViewportSize(size)
       await page.goto(screen.path)
       await settled(page)
-      // charts draw themselves a frame after their data
-      await page.evaluate(
-        () => new Promise((resolve) => requestAnimationFrame(() => requestAnimationFrame(resolve))),
-      )
+      await drawn(page)
       const height = await page.evaluate(() => document.documentElement.scrollHeight)
       await page.screenshot({
         path: `pictures/${size.width}/${given.role}-${screen.name}.png`,

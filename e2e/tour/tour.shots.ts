@@ -4,7 +4,7 @@ import { paths } from '@weirlight/shared/paths'
 import type { Role } from '@weirlight/shared/permissions'
 import { accountOf } from '../support/accounts.js'
 import { findThings } from '../support/screens.js'
-import { settled } from '../support/settled.js'
+import { drawn, settled } from '../support/settled.js'
 import { expect, test } from '../support/test.js'
 
 const DESK = { width: 1440, height: 900 }
@@ -39,10 +39,7 @@ test('the pictures of the tour', async ({ as, apiOf }) => {
     await page.emulateMedia({ reducedMotion: 'reduce' })
     await page.goto(path)
     await settled(page)
-    // charts draw themselves a frame after their data
-    await page.evaluate(
-      () => new Promise((resolve) => requestAnimationFrame(() => requestAnimationFrame(resolve))),
-    )
+    await drawn(page)
     const file = `tour/${name}.jpg`
     await page.screenshot({ path: file, type: 'jpeg', quality: 72, animations: 'disabled' })
     expect.soft(statSync(file).size, `${file} is large for a README`).toBeLessThanOrEqual(LARGEST_BYTES)
