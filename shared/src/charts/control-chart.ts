@@ -49,6 +49,12 @@ export function controlChart(input: ControlChartInput): EChartsOption {
       type: 'category',
       data: points.map((point) => point.label),
       ...look,
+      // the batch says enough below the point; its position stands in the table
+      axisLabel: {
+        ...look.axisLabel,
+        margin: 14,
+        formatter: (label: string) => label.split(',')[0] ?? label,
+      },
       splitLine: { show: false },
       axisLine: { show: true, onZero: false, lineStyle: { color: colours.rule } },
     },

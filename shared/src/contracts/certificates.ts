@@ -202,6 +202,8 @@ export const checkCertificate = defineEndpoint({
     state: certificateState.nullable(),
     issuedAt: instant.nullable(),
     laboratoryName: z.string().nullable(),
+    /** the laboratory's: times on the page are those on the certificate */
+    timeZone: z.string().nullable(),
     sha256: z.string().nullable(),
     replacedBy: z.string().nullable(),
   }),

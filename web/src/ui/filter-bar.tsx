@@ -1,4 +1,5 @@
 import { useEffect, useState, type ReactNode } from 'react'
+import { parseDay } from '../lib/time'
 
 /** The row of filters over a list. */
 export function FilterBar({ children, onClear }: { children: ReactNode; onClear?: () => void }) {
@@ -76,11 +77,34 @@ export function FilterText({
   )
 }
 
+/** A day as 2026-12-01 in every country: the browser's own field would write it in the order of its language. */
 export function FilterDay({ label, value, onChange }: ControlProps) {
+  const [text, setText] = useState(value)
+  const [seen, setSeen] = useState(value)
+  if (seen !== value) {
+    setSeen(value)
+    setText(value)
+  }
+  const isOdd = text.trim().length >= 10 && parseDay(text) === null
   return (
     <label>
       {label}
-      <input className="field" type="date" value={value} onChange={(event) => onChange(event.target.value)} />
+      <input
+        className="field"
+        inputMode="numeric"
+        autoComplete="off"
+        placeholder="2026-12-01"
+        style={{ width: 118 }}
+        value={text}
+        aria-invalid={isOdd || undefined}
+        onChange={(event) => {
+          setText(event.target.value)
+          const typed = event.target.value.trim()
+          // half a day filters nothing
+          const day = typed.length >= 10 ? parseDay(typed) : typed === '' ? '' : null
+          if (day !== null && day !== value) onChange(day)
+        }}
+      />
     </label>
   )
 }

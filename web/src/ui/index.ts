@@ -1,6 +1,7 @@
 /* The light pieces of the kit. Those that bring antd, ECharts or the grid are imported by their own path:
    ./dialogs, ./decimal-input, ./time-inputs, ./form-problem, ./run-grid, ./chart, ./upload-preview, ./tint */
 export { Aligned } from './aligned'
+export { Cautions } from './cautions'
 export { Clock, ReadingWindow, Since } from './clock'
 export { DataTable, type Column } from './data-table'
 export { FilterBar, FilterDay, FilterSelect, FilterText } from './filter-bar'
@@ -23,3 +24,5 @@ export { Bar, Box, Columns, Criteria, Kbd, KeyHints, KeyValues, Strip, type Mayb
 export { Signatures } from './signatures'
 export { MarkShape, StatusTag, type Mark } from './status-tag'
 export { useStory, type StorySlotProps } from './story'
+export { unbroken } from './unbroken'
+export { UsedIn } from './used-in'

@@ -3,6 +3,7 @@ import { Link } from 'react-router-dom'
 import { useIsNarrow } from '../lib/use-is-narrow'
 import { useTitle } from '../lib/use-title'
 import { present, type MaybeFact } from './sheet'
+import { unbroken } from './unbroken'
 
 interface MarginPageProps {
   title: string
@@ -65,7 +66,7 @@ export function MarginPage({
             ← {back.label}
           </Link>
         )}
-        <h1 id={headingId}>{title}</h1>
+        <h1 id={headingId}>{unbroken(title)}</h1>
         {subtitle && <div className="page-sub">{subtitle}</div>}
         {state && <div className="page-state">{state}</div>}
         {hasMore &&

@@ -14,7 +14,7 @@ interface SignaturesProps {
 /** Who signed what, and whether the signature still stands. */
 export function Signatures({ items }: SignaturesProps) {
   const { at } = useLaboratoryTime()
-  if (items.length === 0) return <span className="quiet">Nobody yet</span>
+  if (items.length === 0) return <p className="quiet">Nobody yet</p>
   return (
     <ul className="check-list">
       {items.map((item) => (

@@ -27,10 +27,13 @@ export function MarkShape({ shape }: { shape: Shape }) {
 
 /** A state: always a word and a shape. Children take the place of the word where a number says it better. */
 export function StatusTag({ mark, children }: { mark: Mark; children?: ReactNode }) {
+  const words = children ?? mark.word
+  // a line break inside two short words helps nobody
+  const isShort = typeof words === 'string' && words.length <= 12
   return (
     <span className={`state is-${mark.tone}`}>
       <MarkShape shape={mark.shape} />
-      <span>{children ?? mark.word}</span>
+      <span className={isShort ? 'nowrap' : undefined}>{words}</span>
     </span>
   )
 }

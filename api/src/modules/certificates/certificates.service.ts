@@ -169,6 +169,7 @@ export class CertificatesService {
       state: (row?.state ?? null) as CertificateState | null,
       issuedAt: row?.issuedAt.toISOString() ?? null,
       laboratoryName: laboratory?.name ?? null,
+      timeZone: laboratory?.timeZone ?? null,
       sha256: row?.sha256 ?? null,
       replacedBy: row?.replacedBy ?? null,
     }

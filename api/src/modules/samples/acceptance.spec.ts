@@ -140,10 +140,10 @@ describe('holding time', () => {
   it('is kept with the rule that gave it', () => {
     expect(holdingOf(kept, iron.holdTime)).toEqual({
       dueAt: new Date('2027-05-29T08:00:00Z'),
-      ruleText: '180 days from collection (metals-in-acid, preserved: nitric-acid)',
+      ruleText: '180 days from collection (metals in acid, preserved: nitric acid)',
     })
     expect(holdingOf({ ...kept, ph: '' }, iron.holdTime).ruleText).toBe(
-      '14 days from collection (metals-in-acid, the rule without conditions)',
+      '14 days from collection (metals in acid, the rule without conditions)',
     )
   })
   it('stands as kept, whatever the rule says now', () => {

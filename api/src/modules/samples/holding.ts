@@ -34,6 +34,9 @@ export function engineRule({ rule }: Pick<HoldRule, 'rule'>): HoldTimeRule {
 
 const inWords = (hours: number) => (hours % 24 === 0 && hours > 48 ? `${hours / 24} days` : `${hours} hours`)
 
+/** `metals-in-acid`, `chromium-vi`: people read it on the sample and on the story of a number. */
+const codeInWords = (code: string) => code.replace(/^chromium-vi$/, 'chromium(VI)').replaceAll('-', ' ')
+
 /** Until when the sample may be read, by the rule as it stands now; the words are kept with the determination. */
 export function holdingOf(kept: Kept, hold: HoldRule): { dueAt: Date; ruleText: string } {
   const found = holdTime({
@@ -48,7 +51,7 @@ export function holdingOf(kept: Kept, hold: HoldRule): { dueAt: Date; ruleText: 
   })
   return {
     dueAt: new Date(found.dueAt),
-    ruleText: `${inWords(found.hours)} from collection (${hold.code}, ${found.because})`,
+    ruleText: `${inWords(found.hours)} from collection (${codeInWords(hold.code)}, ${found.because.replaceAll('-', ' ')})`,
   }
 }
 

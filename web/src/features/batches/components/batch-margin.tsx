@@ -2,7 +2,7 @@ import type { ReactNode } from 'react'
 import { Link } from 'react-router-dom'
 import type { BatchView } from '../api/batch-queries'
 import { paths, useLaboratoryTime } from '../../../lib'
-import { Clock, Signatures, type MaybeFact } from '../../../ui'
+import { Cautions, Clock, Signatures, type MaybeFact } from '../../../ui'
 
 /** What a run stands on, for the margin of its page. */
 export function useBatchFacts(batch: BatchView): MaybeFact[] {
@@ -66,11 +66,7 @@ export function batchNotes(batch: BatchView): ReactNode[] {
         <Signatures items={batch.signatures} />
       </div>
     ),
-    batch.cautions.length > 0 && (
-      <p key="care">
-        <strong>Care.</strong> {batch.cautions.join(' ')}
-      </p>
-    ),
+    batch.cautions.length > 0 && <Cautions key="care" items={batch.cautions} />,
   ]
 }
 

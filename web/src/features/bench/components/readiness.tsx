@@ -2,7 +2,7 @@ import { useQuery } from '@tanstack/react-query'
 import { getReadiness, type ResponseOf } from '@weirlight/shared/contracts'
 import { Link } from 'react-router-dom'
 import { paths, queryFor, useCan, useLaboratoryTime } from '../../../lib'
-import { Box, Empty, Loaded, MarkShape, StatusTag } from '../../../ui'
+import { Box, Empty, Loaded, MarkShape, StatusTag, unbroken } from '../../../ui'
 import './bench.css'
 
 type Method = ResponseOf<typeof getReadiness>['methods'][number]
@@ -75,7 +75,7 @@ function ReadinessLine({ line }: { line: Line }) {
       </span>
       <span>
         <span className="quiet">{line.what}.</span>{' '}
-        {isOpen && line.to ? <Link to={line.to}>{line.why}</Link> : line.why}
+        {isOpen && line.to ? <Link to={line.to}>{unbroken(line.why)}</Link> : unbroken(line.why)}
       </span>
       <span className="note">
         <Until dueAt={line.dueAt} />

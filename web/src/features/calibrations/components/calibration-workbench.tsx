@@ -10,7 +10,7 @@ import { Button } from 'antd'
 import { useEffect, useMemo, useState } from 'react'
 import { paths, ProblemError, useCall, useLaboratoryTime, useNotice } from '../../../lib'
 import { useIsNarrow } from '../../../lib/use-is-narrow'
-import { Bar, Columns, MarginPage, StatusTag } from '../../../ui'
+import { Bar, Cautions, Columns, MarginPage, StatusTag } from '../../../ui'
 import { ConfirmDialog, ReasonDialog } from '../../../ui/dialogs'
 import { LeaveDialog } from '../../../ui/form-problem'
 import {
@@ -95,11 +95,7 @@ export function CalibrationWorkbench({ view, method }: { view: CalibrationView; 
       notes={[
         <SavedLine key="saved" status={sheet.status} read={read} />,
         <p key="window">{method.definition.development.text}</p>,
-        method.definition.cautions.length > 0 && (
-          <p key="care">
-            <strong>Care.</strong> {method.definition.cautions.map((caution) => caution.text).join(' ')}
-          </p>
-        ),
+        method.definition.cautions.length > 0 && <Cautions key="care" items={method.definition.cautions} />,
       ]}
       bar={
         <Bar

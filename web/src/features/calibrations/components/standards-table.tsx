@@ -67,7 +67,7 @@ export function StandardsTable({ view, live, definition }: StandardsTableProps) 
       title: 'Made from',
       cell: (row) => (
         <>
-          {row.lotNumber ?? 'the stock'}
+          {row.lotNumber ?? (Number(row.concentration) === 0 ? 'reagent water' : 'the stock')}
           {row.role === 'second-source' && <span className="quiet"> · second source</span>}
         </>
       ),

@@ -53,7 +53,10 @@ function Said({ answer, code }: { answer: CheckAnswer; code: string }) {
         {answer.issuedAt !== null && (
           <>
             {' '}
-            on <span className="nowrap">{formatInstantWithOffset(answer.issuedAt, zone())}</span>
+            on{' '}
+            <span className="nowrap">
+              {formatInstantWithOffset(answer.issuedAt, answer.timeZone ?? 'UTC')}
+            </span>
           </>
         )}
         . {standing(answer)}
@@ -80,6 +83,3 @@ function standing({ state, replacedBy }: CheckAnswer): string {
     ? 'An amendment took its place: do not use this one.'
     : `The amendment ${replacedBy} took its place: do not use this one.`
 }
-
-/** the reader's own zone; the offset stands beside the time */
-const zone = () => Intl.DateTimeFormat().resolvedOptions().timeZone

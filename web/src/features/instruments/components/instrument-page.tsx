@@ -4,7 +4,7 @@ import { Button } from 'antd'
 import { useState } from 'react'
 import { Link } from 'react-router-dom'
 import { paths, useCall, useCan, useLaboratoryTime, useNotice } from '../../../lib'
-import { Bar, Box, DataTable, Loaded, MarginPage, StatusTag, Strip, type Column } from '../../../ui'
+import { Bar, DataTable, Loaded, MarginPage, StatusTag, Strip, UsedIn, type Column } from '../../../ui'
 import { ReasonDialog } from '../../../ui/dialogs'
 import { FormDialog } from '../../../ui/form-dialog'
 import {
@@ -62,23 +62,22 @@ function InstrumentPage({ instrument }: { instrument: InstrumentView }) {
       )}
       <div className="stack">
         <Checks checks={instrument.checks} />
-        <Box title="What was read on it">
-          <DataTable
-            label="Calibrations and batches on this instrument"
-            rows={instrument.usedIn}
-            columns={[
-              { key: 'number', title: 'Number', text: (row) => row.number },
-              {
-                key: 'kind',
-                title: 'What',
-                text: (row) => (row.kind === 'calibration' ? 'Calibration' : 'Batch'),
-              },
-            ]}
-            rowKey={(row) => `${row.kind} ${row.id}`}
-            rowTo={(row) => (row.kind === 'calibration' ? paths.calibration(row.id) : paths.batch(row.id))}
-            empty={{ title: 'Nothing yet' }}
-          />
-        </Box>
+        <UsedIn
+          title="What was read on it"
+          groups={[
+            {
+              words: 'Calibrations',
+              to: paths.calibration,
+              uses: instrument.usedIn.filter((use) => use.kind === 'calibration'),
+            },
+            {
+              words: 'Batches',
+              to: paths.batch,
+              uses: instrument.usedIn.filter((use) => use.kind !== 'calibration'),
+            },
+          ]}
+          none="Nothing yet."
+        />
       </div>
     </MarginPage>
   )

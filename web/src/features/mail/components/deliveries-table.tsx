@@ -8,6 +8,18 @@ import './deliveries.css'
 /** as alerts and certificates give it */
 type Delivery = z.infer<typeof delivery>
 
+/** On a phone an address is broken behind the @, not within a name. */
+function Address({ of }: { of: string }) {
+  const [name = '', ...rest] = of.split('@')
+  if (rest.length === 0) return of
+  return (
+    <>
+      {name}@<wbr />
+      {rest.join('@')}
+    </>
+  )
+}
+
 interface DeliveriesTableProps {
   deliveries: readonly Delivery[]
   label: string
@@ -22,7 +34,7 @@ export function DeliveriesTable({ deliveries, label }: DeliveriesTableProps) {
       title: 'To',
       cell: (row) => (
         <span className="delivery-to">
-          {row.to}
+          <Address of={row.to} />
           {row.lastError !== '' && <span className="delivery-error above">{row.lastError}</span>}
         </span>
       ),

@@ -51,7 +51,7 @@ export function MailList() {
       title: 'Left',
       cell: (row) =>
         row.sentAt ? (
-          at(row.sentAt)
+          <span className="nowrap">{at(row.sentAt)}</span>
         ) : row.nextTryAt && row.state === 'waiting' ? (
           <Clock dueAt={row.nextTryAt} what="next try" soonHours={0} />
         ) : (

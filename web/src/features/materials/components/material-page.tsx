@@ -4,7 +4,18 @@ import { Button } from 'antd'
 import { useState } from 'react'
 import { Link } from 'react-router-dom'
 import { paths, useCall, useCan, useLaboratoryTime, useNotice } from '../../../lib'
-import { Bar, Box, Columns, DataTable, KeyValues, Loaded, MarginPage, StatusTag, Strip } from '../../../ui'
+import {
+  Bar,
+  Box,
+  Columns,
+  DataTable,
+  KeyValues,
+  Loaded,
+  MarginPage,
+  StatusTag,
+  Strip,
+  UsedIn,
+} from '../../../ui'
 import { ReasonDialog } from '../../../ui/dialogs'
 import { materialQuery, type MaterialView } from '../api/material-queries'
 import { KIND_WORDS, strengthWords, usableMark } from '../material-words'
@@ -122,24 +133,23 @@ function Ancestry({ lot }: { lot: MaterialView }) {
   )
 }
 
-const USE_WORDS = { calibration: 'Calibration', batch: 'Batch', lot: 'Lot made from it' } as const
-const USE_PATHS = { calibration: paths.calibration, batch: paths.batch, lot: paths.material } as const
+const USE_KINDS = [
+  { kind: 'lot', words: 'Lots made from it', to: paths.material },
+  { kind: 'calibration', words: 'Calibrations', to: paths.calibration },
+  { kind: 'batch', words: 'Batches', to: paths.batch },
+] as const
 
 function Uses({ lot }: { lot: MaterialView }) {
   return (
-    <Box title="What it touched">
-      <DataTable
-        label="What it touched"
-        rows={lot.usedIn}
-        columns={[
-          { key: 'number', title: 'Number', text: (row) => row.number },
-          { key: 'kind', title: 'What', text: (row) => USE_WORDS[row.kind] },
-        ]}
-        rowKey={(row) => `${row.kind} ${row.id}`}
-        rowTo={(row) => USE_PATHS[row.kind](row.id)}
-        empty={{ title: 'Nothing yet', text: 'No calibration, batch or other lot was made with it.' }}
-      />
-    </Box>
+    <UsedIn
+      title="What it touched"
+      groups={USE_KINDS.map(({ kind, words, to }) => ({
+        words,
+        to,
+        uses: lot.usedIn.filter((use) => use.kind === kind),
+      }))}
+      none="No calibration, batch or other lot was made with it yet."
+    />
   )
 }
 

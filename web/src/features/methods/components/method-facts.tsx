@@ -80,7 +80,10 @@ export function MethodCautions({ record }: { record: MethodRecord }) {
       <ul className="plain-list stack">
         {record.cautions.map((caution) => (
           <li key={caution.hazard}>
-            <span className="strong">{caution.hazard}.</span> {caution.text} <Provenance of={caution} />
+            <span className="strong">
+              {caution.hazard.charAt(0).toUpperCase() + caution.hazard.slice(1)}.
+            </span>{' '}
+            {caution.text} <Provenance of={caution} />
           </li>
         ))}
       </ul>

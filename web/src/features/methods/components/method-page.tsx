@@ -5,6 +5,7 @@ import { paths, useCan } from '../../../lib'
 import {
   Bar,
   Box,
+  Cautions,
   Columns,
   DataTable,
   Loaded,
@@ -81,11 +82,7 @@ function MethodPage({
           ),
         },
       ]}
-      notes={record.cautions.map((caution) => (
-        <span key={caution.hazard}>
-          <strong>{caution.hazard}.</strong> {caution.text}
-        </span>
-      ))}
+      notes={[record.cautions.length > 0 && <Cautions key="care" items={record.cautions} />]}
       bar={
         <Bar
           lead="Each number stands with its source. A diamond asks you to check it before you rely on it."

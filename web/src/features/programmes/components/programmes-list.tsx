@@ -92,6 +92,11 @@ function Clients({ clients }: { clients: Programme['clients'] }) {
   ))
 }
 
+const kindWords = (row: Limit) => KIND_WORDS[row.kind] ?? row.kind
+
+/** `Action level` needs no `action level` beside it. */
+const isSaidBy = (name: string, kind: string) => name.toLowerCase().includes(kind.toLowerCase())
+
 const columnsOn = (day: string): Column<Limit>[] => [
   { key: 'what', title: 'Determination', text: (row) => determinationName(row.analyte, row.form) },
   {
@@ -99,7 +104,8 @@ const columnsOn = (day: string): Column<Limit>[] => [
     title: 'Limit',
     cell: (row) => (
       <>
-        {row.name} <span className="quiet">· {KIND_WORDS[row.kind] ?? row.kind}</span>
+        {row.name}
+        {!isSaidBy(row.name, kindWords(row)) && <span className="quiet"> · {kindWords(row)}</span>}
       </>
     ),
   },
@@ -124,7 +130,7 @@ const columnsOn = (day: string): Column<Limit>[] => [
       <>
         <StatusTag mark={standingMark(row, day)} />
         <br />
-        <span className="note">
+        <span className="note nowrap">
           {row.validFrom}
           {row.validUntil ? ` to ${row.validUntil}` : ' on'}
         </span>
