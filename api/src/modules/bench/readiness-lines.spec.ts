@@ -95,6 +95,19 @@ describe('readinessLines', () => {
     expect(linesOf('Reagents', { materials: givenUp }).map(({ ready }) => ready)).toEqual([true])
   })
 
+  it('names three reagents and counts more, with the one that runs out first', () => {
+    // constructed
+    const days = ['2027-03-01', '2027-01-15', '2027-02-01', '2027-04-01']
+    const lots = days.map((expiresOn, index) =>
+      lot({ id: `2${index}`, number: `R-26-002${index}`, name: `Buffer ${index}`, expiresOn }),
+    )
+    const why = (materials: typeof lots) => linesOf('Reagents', { materials })[0]?.why
+    expect(why(lots.slice(0, 3))).toBe(
+      'In date: R-26-0020, Buffer 0; R-26-0021, Buffer 1; R-26-0022, Buffer 2.',
+    )
+    expect(why(lots)).toBe('All 4 in date. First to run out: R-26-0021, Buffer 1.')
+  })
+
   it('leaves out another metal’s lots', () => {
     const materials = facts.materials.map((one) => ({ ...one, analyte: 'Cu' as const }))
     expect(linesOf('Reagents', { materials })[0]?.ready).toBe(false)

@@ -8,6 +8,8 @@ import type { CalibrationInForce } from './in-force.repository.js'
 
 export type ReadinessLine = z.infer<typeof readinessLine>
 
+/** more reagents than these are counted: a wall of numbers says less */
+const NAMED_AT_MOST = 3
 /** an expired reagent that nobody replaced is asked for this long; later it counts as given up */
 const GIVEN_UP_AFTER_DAYS = 60
 const DAY = 86_400_000
@@ -124,13 +126,17 @@ function reagentLines({ materials, analyte, today }: MethodFacts): ReadinessLine
   }))
   const first = inDate.toSorted((a, b) => a.expiresOn.localeCompare(b.expiresOn))[0]
   if (!first) return lines
-  const names = inDate.map(({ number, name }) => `${number}, ${name}`).join('; ')
+  const named = (lot: MaterialRow) => `${lot.number}, ${lot.name}`
+  const why =
+    inDate.length <= NAMED_AT_MOST
+      ? `In date: ${inDate.map(named).join('; ')}.`
+      : `All ${inDate.length} in date. First to run out: ${named(first)}.`
   return [
     ...lines,
     {
       what: 'Reagents',
       ready: true,
-      why: `In date: ${names}.`,
+      why,
       dueAt: first.expiresOn,
       to: paths.material(first.id),
     },

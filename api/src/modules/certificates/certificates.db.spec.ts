@@ -552,6 +552,7 @@ describe('checking a code', () => {
       state: 'issued',
       issuedAt: view.issuedAt,
       laboratoryName: view.snapshot.laboratory.name,
+      timeZone: view.snapshot.timeZone,
       sha256: view.sha256,
       replacedBy: null,
     })
