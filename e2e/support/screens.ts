@@ -169,9 +169,12 @@ const DUMMY = new Proxy({}, { get: () => '0' }) as Things
 /** The first step of an address: the part of the laboratory it belongs to. */
 export const areaOf = (screen: Screen): string => screen.path.split(/[/?]/)[1] ?? ''
 
+/** The same before any row is known. */
+export const screensUnfilled = (role: Role): Screen[] => screensOf(role, DUMMY)
+
 /** The parts a role can open, known before any row is. */
 export function areasOf(role: Role | 'nobody'): string[] {
-  const screens = role === 'nobody' ? publicScreens(DUMMY) : screensOf(role, DUMMY)
+  const screens = role === 'nobody' ? publicScreens(DUMMY) : screensUnfilled(role)
   return [...new Set(screens.map(areaOf))]
 }
 
