@@ -1,12 +1,11 @@
 import betainc from '@stdlib/math-base-special-betainc'
 import erfc from '@stdlib/math-base-special-erfc'
 import erfcinv from '@stdlib/math-base-special-erfcinv'
-import gammainc from '@stdlib/math-base-special-gammainc'
-import gammaincinv from '@stdlib/math-base-special-gammaincinv'
 import fQuantile from '@stdlib/stats-base-dists-f-quantile'
 import tQuantile from '@stdlib/stats-base-dists-t-quantile'
 import { AssayError } from './assay-error.js'
 import { finiteResult, requireFinite } from './argument-checks.js'
+import { gammaTail, gammaUpperQuantile } from './incomplete-gamma.js'
 
 /**
  * Quantiles and probabilities of the t, F, chi-square and normal distributions.
@@ -26,6 +25,9 @@ function requireDegreesOfFreedom(value: unknown): number {
   throw new AssayError('invalid-argument', 'The degrees of freedom must be above zero.')
 }
 
+/** Share of t^2 or F below which the body of the distribution is computed instead of its tail. */
+const NEAR_ZERO = 1e-8
+
 // quantiles cost some microseconds and a batch asks for the same few again and again
 const remembered = new Map<string, number>()
 
@@ -42,7 +44,26 @@ function remember(key: string, compute: () => number): number {
 export function tUpperQuantile(alpha: number, degreesOfFreedom: number): number {
   const p = requireProbability(alpha, 'significance level')
   const df = requireDegreesOfFreedom(degreesOfFreedom)
-  return remember(`t ${p} ${df}`, () => -tQuantile(p, df))
+  return remember(`t ${p} ${df}`, () => {
+    const t = -tQuantile(p, df)
+    return Number.isFinite(t) || df > 100 ? t : farTQuantile(p, df)
+  })
+}
+
+/*
+ * So far out that t squared leaves the range of doubles, the tail falls with the power of the degrees of freedom alone:
+ * it is scaled from a t at which the beta function still answers and is already a pure power. Such a t needs few degrees
+ * of freedom.
+ */
+function farTQuantile(alpha: number, df: number): number {
+  const known = 1e10 * Math.sqrt(df)
+  return known * (tTwoSidedProbability(known, df) / 2 / alpha) ** (1 / df)
+}
+
+function farTProbability(t: number, df: number): number {
+  if (df > 100) return 0
+  const known = 1e10 * Math.sqrt(df)
+  return tTwoSidedProbability(known, df) * (known / t) ** df
 }
 
 /** t of a two-sided interval: P(-t < T < t) = confidence. */
@@ -63,7 +84,7 @@ export function fUpperQuantile(alpha: number, df1: number, df2: number): number 
 export function chiSquareUpperQuantile(alpha: number, degreesOfFreedom: number): number {
   const p = requireProbability(alpha, 'significance level')
   const df = requireDegreesOfFreedom(degreesOfFreedom)
-  return remember(`c ${p} ${df}`, () => 2 * gammaincinv(p, df / 2, true))
+  return remember(`c ${p} ${df}`, () => 2 * gammaUpperQuantile(p, df / 2))
 }
 
 /** z with P(Z > z) = alpha. */
@@ -77,7 +98,10 @@ export function tTwoSidedProbability(t: number, degreesOfFreedom: number): numbe
   const value = Math.abs(requireFinite(t, 't value'))
   const df = requireDegreesOfFreedom(degreesOfFreedom)
   const square = value * value
-  if (!Number.isFinite(square)) return 0
+  if (!(square < Number.MAX_VALUE / 2)) return finiteResult(farTProbability(value, df), 'probability')
+  // near zero df / (df + t^2) is 1 but for its last bits: the other tail has the digits
+  const body = square / (df + square)
+  if (body < NEAR_ZERO) return finiteResult(1 - betainc(body, 0.5, df / 2, true, false), 'probability')
   return finiteResult(betainc(df / (df + square), df / 2, 0.5, true, false), 'probability')
 }
 
@@ -94,6 +118,8 @@ export function fUpperProbability(f: number, df1: number, df2: number): number {
   const b = requireDegreesOfFreedom(df2)
   if (value <= 0) return 1
   if (!Number.isFinite(a * value)) return 0
+  const body = (a * value) / (b + a * value)
+  if (body < NEAR_ZERO) return finiteResult(1 - betainc(body, a / 2, b / 2, true, false), 'probability')
   return finiteResult(betainc(b / (b + a * value), b / 2, a / 2, true, false), 'probability')
 }
 
@@ -102,7 +128,7 @@ export function chiSquareUpperProbability(x: number, degreesOfFreedom: number): 
   const value = requireFinite(x, 'chi-square value')
   const df = requireDegreesOfFreedom(degreesOfFreedom)
   if (value <= 0) return 1
-  return finiteResult(gammainc(value / 2, df / 2, true, true), 'probability')
+  return finiteResult(gammaTail({ x: value / 2, shape: df / 2, isUpper: true }), 'probability')
 }
 
 /** P(Z > z). */

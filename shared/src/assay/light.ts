@@ -57,6 +57,20 @@ export function expectedSlope(input: ExpectedSlopeInput): number {
 }
 
 /**
+ * Concentration to expect at an absorbance, from the slope the complex lets expect: A / slope (Beer-Lambert law, no
+ * blank). For planning and for drawing a ladder; a result is read off a calibration by `predictConcentration`.
+ *
+ * @param input absorbance, and slope in absorbance per mg/L
+ * @returns mg/L
+ * @throws AssayError non-finite; invalid-argument: slope not above zero; numerical-overflow
+ */
+export function expectedConcentration(input: { absorbance: number; slope: number }): number {
+  requireObject(input, 'absorbance with a slope')
+  const absorbance = requireFinite(input.absorbance, 'absorbance')
+  return finiteResult(absorbance / requirePositive(input.slope, 'slope'), 'expected concentration')
+}
+
+/**
  * Energy of the light absorbed: h c N_A / lambda for a mole, h c / (e lambda) for one photon.
  *
  * Source: exact SI constants of 2019. 510 nm is 234.56 kJ/mol.

@@ -122,6 +122,7 @@ const inputs: Record<string, fc.Arbitrary<unknown[]>> = {
     ),
     tolerancePercent: hostile,
   }),
+  expectedConcentration: one({ absorbance: hostile, slope: hostile }),
   expectedSlope: one({ molarAbsorptivity: hostile, molarMass: hostile, pathLengthCm: hostile }),
   holdTime: one({
     collectedAt: instant,

@@ -25,6 +25,7 @@ import { fitPolynomial } from './fit-polynomial.js'
 import { holdTime } from './hold-time.js'
 import {
   complementaryHue,
+  expectedConcentration,
   expectedSlope,
   molarAbsorptivity,
   ownColour,
@@ -78,6 +79,7 @@ export const validationFunctions = table({
   enNumber,
   evaluateRunRules,
   ewmaChart,
+  expectedConcentration,
   expectedSlope,
   fitCalibration,
   fitPolynomial,
