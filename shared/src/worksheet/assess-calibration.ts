@@ -1,5 +1,6 @@
 import {
   AssayError,
+  describeSample,
   detectionLimits,
   diagnoseSlope,
   ENGINE_VERSION,
@@ -170,9 +171,9 @@ function readBack(given: { fit: CalibrationFit; lowest: number; all: number; atL
   let worst = 0
   let ok = true
   for (const [concentration, rows] of byLevel) {
-    const errors = rows.map((row) => row.relativeErrorPercent)
-    if (concentration === 0 || errors.some((error) => error === null)) continue
-    const mean = errors.reduce<number>((sum, error) => sum + (error ?? 0), 0) / errors.length
+    const errors = rows.map((row) => row.relativeErrorPercent).filter((error) => error !== null)
+    if (concentration === 0 || errors.length < rows.length) continue
+    const { mean } = describeSample(errors)
     if (Math.abs(mean) > Math.abs(worst)) worst = mean
     if (Math.abs(mean) > (concentration === lowest ? atLowest : all)) ok = false
   }

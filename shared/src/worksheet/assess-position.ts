@@ -5,6 +5,7 @@ import {
   combinedUncertainty,
   compareWithLimit,
   convertUnit,
+  describeSample,
   predictConcentration,
   recoveryPercent,
   relativePercentDifference,
@@ -73,15 +74,17 @@ export function assessPosition(position: PositionToAssess, rules: AssessmentRule
 
 function assess(position: PositionToAssess, rules: AssessmentRules): Assessment {
   const absorbances = [...position.absorbances]
-  const meanAbsorbance = absorbances.reduce((sum, value) => sum + value, 0) / absorbances.length
   // the stored fit is the engine's own object, kept as JSON
   const predicted = predictConcentration(rules.fit as unknown as CalibrationFit, { absorbances })
+  const meanAbsorbance = predicted.absorbance
   const inSample = applyDilution({
     concentration: predicted.concentration,
     standardError: predicted.standardError,
     dilutionFactor: position.dilution,
   })
-  const standardError = inSample.standardError ?? predicted.standardError * position.dilution
+  const diluted = (concentration: number) =>
+    applyDilution({ concentration, dilutionFactor: position.dilution }).concentration
+  const standardError = inSample.standardError ?? diluted(predicted.standardError)
   const { expandedUncertainty } = combinedUncertainty({
     components: [
       { name: 'inverse prediction', value: standardError, kind: 'absolute' },
@@ -99,8 +102,8 @@ function assess(position: PositionToAssess, rules: AssessmentRules): Assessment 
     concentration: shown(inSample.concentration),
     expandedUncertainty: shown(expandedUncertainty),
     limits: {
-      detection: shown(rules.detectionLimit * position.dilution),
-      quantification: shown(quantification * position.dilution),
+      detection: shown(diluted(rules.detectionLimit)),
+      quantification: shown(diluted(quantification)),
     },
     nonDetect: position.reporting.nonDetect as NonDetectRule,
     rounding: { to: 'significant', digits: position.reporting.digits, ties: position.reporting.ties },
@@ -210,7 +213,7 @@ function duplicate(given: {
   const first = given.parent?.concentration ?? null
   if (first === null) return { qcText: 'its sample is not read yet' }
   // near the quantification limit a relative difference says nothing: the absolute one is judged (common practice)
-  if ((first + concentration) / 2 < 5 * rules.reportingLimit) {
+  if (describeSample([first, concentration]).mean < 5 * rules.reportingLimit) {
     const difference = absoluteDifference(first, concentration)
     return {
       qcValue: difference,

@@ -1,3 +1,4 @@
+import { absoluteDifference } from '../assay/index.js'
 import type { Assessment, AssessmentRules } from '../contracts/index.js'
 
 export interface PositionToCheck {
@@ -106,12 +107,8 @@ function findInPosition(
   }
   const values = readings.map((reading) => reading.absorbance)
   const mean = assessment.meanAbsorbance ?? 0
-  const spread = Math.max(...values) - Math.min(...values)
-  if (
-    values.length > 1 &&
-    spread > REPLICATE_SPREAD.absolute &&
-    spread > Math.abs(mean) * REPLICATE_SPREAD.relative
-  ) {
+  const spread = values.length > 1 ? absoluteDifference(Math.max(...values), Math.min(...values)) : 0
+  if (spread > REPLICATE_SPREAD.absolute && spread > Math.abs(mean) * REPLICATE_SPREAD.relative) {
     say('spread', 'caution', `${name}: its readings lie ${spread.toFixed(4)} apart.`)
   }
   const late =

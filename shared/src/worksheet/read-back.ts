@@ -1,4 +1,10 @@
-import { AssayError, predictConcentration, recoveryPercent, type CalibrationFit } from '../assay/index.js'
+import {
+  AssayError,
+  describeSample,
+  predictConcentration,
+  recoveryPercent,
+  type CalibrationFit,
+} from '../assay/index.js'
 
 export interface StandardToReadBack {
   /** mg/L */
@@ -24,7 +30,7 @@ export function readBackStandards(
 ): StandardReadBack[] {
   return standards.map(({ concentration, absorbances }) => {
     if (absorbances.length === 0) return { meanAbsorbance: null, concentration: null, errorPercent: null }
-    const meanAbsorbance = absorbances.reduce((sum, value) => sum + value, 0) / absorbances.length
+    const meanAbsorbance = describeSample(absorbances).mean
     const found = fit ? readOff(fit, absorbances) : null
     const hasError = found !== null && concentration > 0
     const errorPercent = hasError ? recoveryPercent({ found, expected: concentration }) - 100 : null

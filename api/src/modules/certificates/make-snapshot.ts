@@ -6,7 +6,7 @@ import {
   type MethodDefinition,
   type PositionLimit,
 } from '@weirlight/shared/contracts'
-import { convertUnit } from '@weirlight/shared/assay'
+import { applyDilution, convertUnit } from '@weirlight/shared/assay'
 import { paths } from '@weirlight/shared/paths'
 import { ROLE_NAMES, type Role } from '@weirlight/shared/permissions'
 import { CAUTION, toResultRow, type ResultInputs, type ResultRecord } from '../results/index.js'
@@ -137,7 +137,10 @@ function toLine({
   const definition = more?.definition as unknown as MethodDefinition | undefined
   const limit = result.limitSnapshot as unknown as PositionLimit | null
   const quantification = convertUnit({
-    value: inputs.rules.reportingLimit * Number(inputs.dilution),
+    value: applyDilution({
+      concentration: inputs.rules.reportingLimit,
+      dilutionFactor: Number(inputs.dilution),
+    }).concentration,
     from: 'mg/L',
     to: row.unit,
   })

@@ -1,4 +1,4 @@
-import { ENGINE_VERSION } from '@weirlight/shared/assay'
+import { describeSample, ENGINE_VERSION } from '@weirlight/shared/assay'
 import { determinationName, showUnit, type PositionLimit, type StoryView } from '@weirlight/shared/contracts'
 import { paths } from '@weirlight/shared/paths'
 import type { StoredFit } from '@weirlight/shared/worksheet'
@@ -144,9 +144,8 @@ function computed({ result, recomputed }: Told): StoryView['lines'][number] {
 }
 
 function fromCurve({ calibration, stored, inputs, timeZone }: Told): StoryView['lines'][number] {
-  const mean =
-    inputs.readings.reduce((sum, reading) => sum + Number(reading.absorbance), 0) /
-    Math.max(1, inputs.readings.length)
+  const readings = inputs.readings.map((reading) => Number(reading.absorbance))
+  const mean = readings.length === 0 ? 0 : describeSample(readings).mean
   const short = (value: number) => Number(value.toPrecision(5))
   const times = Number(inputs.dilution) === 1 ? '' : ` × ${inputs.dilution}`
   return {

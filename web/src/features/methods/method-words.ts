@@ -1,3 +1,4 @@
+import { expectedConcentration } from '@weirlight/shared/assay'
 import type { AcceptanceDefinition, MethodRecord } from '@weirlight/shared/contracts'
 
 export interface FactRow {
@@ -139,7 +140,7 @@ export function ladderSteps(
   record: Pick<MethodRecord, 'slopeInOneCm'>,
 ): { label: string; absorbance: number }[] {
   return [0.05, 0.1, 0.2, 0.4, 0.8, 1.5].map((absorbance) => ({
-    label: (absorbance / record.slopeInOneCm.value).toPrecision(2),
+    label: expectedConcentration({ absorbance, slope: record.slopeInOneCm.value }).toPrecision(2),
     absorbance,
   }))
 }
