@@ -89,6 +89,7 @@ const TABLE: Record<string, Entry> = {
   listMaterials: nothing,
   getMaterial: of('lotId'),
   addMaterial: empty,
+  finishMaterial: of('lotId', old),
   withdrawMaterial: of('lotId', reasoned),
   listInstruments: nothing,
   getInstrument: of('instrumentId'),

@@ -181,6 +181,16 @@ export const addMaterial = defineEndpoint({
   body: addMaterialBody,
   response: materialView,
 })
+export const finishMaterial = defineEndpoint({
+  name: 'finishMaterial',
+  summary: 'Record that a lot is used up',
+  method: 'POST',
+  path: '/materials/:id/finish',
+  permission: 'materials.manage',
+  params: idParams,
+  body: z.object({ version }),
+  response: materialView,
+})
 export const withdrawMaterial = defineEndpoint({
   name: 'withdrawMaterial',
   summary: 'Take a lot out of use',
@@ -325,6 +335,7 @@ export const benchEndpoints = [
   listMaterials,
   getMaterial,
   addMaterial,
+  finishMaterial,
   withdrawMaterial,
   listInstruments,
   getInstrument,

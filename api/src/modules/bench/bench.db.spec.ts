@@ -12,6 +12,7 @@ import {
   recordCheck,
   returnInstrument,
   takeInstrumentOut,
+  finishMaterial,
   withdrawMaterial,
 } from '@weirlight/shared/contracts'
 import { sql } from 'kysely'
@@ -149,6 +150,25 @@ describe('a lot', () => {
     }
     const problem = await agent.refused(addMaterial, { body: fields })
     expect(problem.errors?.map(({ path }) => path)).toContain('concentration')
+  })
+
+  it('is used up once, then offered no more; it can still be withdrawn', async () => {
+    const lot = await aLotOfOurs()
+    const params = { id: lot.id }
+    expect((await agent.refused(finishMaterial, { params, body: { version: lot.version + 1 } })).code).toBe(
+      'stale',
+    )
+    const used = await agent.call(finishMaterial, { params, body: { version: lot.version } })
+    expect(used).toMatchObject({ state: 'used-up', usable: false })
+    const again = await agent.refused(finishMaterial, { params, body: { version: used.version } })
+    expect(again.code).toBe('not-allowed-now')
+    const auditor = await at().as(await aUser(at().database.db, { role: 'auditor' }))
+    const barred = await auditor.refused(finishMaterial, { params, body: { version: used.version } })
+    expect(barred.code).toBe('forbidden')
+    const withdrawn = await agent.call(withdrawMaterial, { params, body: { version: used.version, reason } })
+    expect(withdrawn.state).toBe('withdrawn')
+    const late = await agent.refused(finishMaterial, { params, body: { version: withdrawn.version } })
+    expect(late.code).toBe('not-allowed-now')
   })
 
   it('is withdrawn once, with a reason, also when two do it at once', async () => {

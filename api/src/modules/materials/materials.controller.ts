@@ -1,5 +1,11 @@
 import { Controller } from '@nestjs/common'
-import { addMaterial, getMaterial, listMaterials, withdrawMaterial } from '@weirlight/shared/contracts'
+import {
+  addMaterial,
+  finishMaterial,
+  getMaterial,
+  listMaterials,
+  withdrawMaterial,
+} from '@weirlight/shared/contracts'
 import type { Actor } from '@weirlight/shared/permissions'
 import { CurrentActor, Endpoint, Input, type InputOf } from '../../platform/index.js'
 import { MaterialsService } from './materials.service.js'
@@ -21,6 +27,11 @@ export class MaterialsController {
   @Endpoint(addMaterial)
   add(@CurrentActor() actor: Actor, @Input() { body }: InputOf<typeof addMaterial>) {
     return this.materials.add(actor, body)
+  }
+
+  @Endpoint(finishMaterial)
+  finish(@CurrentActor() actor: Actor, @Input() { params, body }: InputOf<typeof finishMaterial>) {
+    return this.materials.finish(actor, { ...params, ...body })
   }
 
   @Endpoint(withdrawMaterial)

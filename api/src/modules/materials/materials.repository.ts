@@ -125,9 +125,7 @@ export class MaterialsRepository {
     return rows[0]?.id ?? ''
   }
 
-  async withdraw(trx: Trx, id: string): Promise<void> {
-    await sql`update material_lots set state = 'withdrawn', version = version + 1 where id = ${id}`.execute(
-      trx,
-    )
+  async setState(trx: Trx, id: string, state: 'used-up' | 'withdrawn'): Promise<void> {
+    await sql`update material_lots set state = ${state}, version = version + 1 where id = ${id}`.execute(trx)
   }
 }

@@ -75,6 +75,19 @@ export class MaterialsService {
     })
   }
 
+  /** A lot that is empty: no longer offered, and nothing is said against what was made with it. */
+  async finish(actor: Actor, { id, version }: { id: string; version: number }): Promise<MaterialView> {
+    return this.db.transaction(actor, 'material.finish', null, async (trx) => {
+      const lot = await this.materials.lock(trx, id)
+      if (!lot) throw notFound('lot')
+      await assertVersion(trx, { thing: 'materialLots', id, has: lot.version, sent: version })
+      if (lot.state === 'used-up') throw notAllowedNow(`${lot.number} is used up already.`)
+      if (lot.state === 'withdrawn') throw notAllowedNow(`${lot.number} is withdrawn already.`)
+      await this.materials.setState(trx, id, 'used-up')
+      return this.get(trx, id)
+    })
+  }
+
   async withdraw(
     actor: Actor,
     { id, version, reason }: { id: string; version: number; reason: string },
@@ -84,7 +97,7 @@ export class MaterialsService {
       if (!lot) throw notFound('lot')
       await assertVersion(trx, { thing: 'materialLots', id, has: lot.version, sent: version })
       if (lot.state === 'withdrawn') throw notAllowedNow(`${lot.number} is withdrawn already.`)
-      await this.materials.withdraw(trx, id)
+      await this.materials.setState(trx, id, 'withdrawn')
       return this.get(trx, id)
     })
   }

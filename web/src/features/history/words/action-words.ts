@@ -38,6 +38,7 @@ const ACTIONS: Record<string, string> = {
   'certificate.open': 'Opened a certificate',
   'certificate.send-again': 'Sent a certificate again',
   'material.add': 'Recorded a lot',
+  'material.finish': 'Used up a lot',
   'material.withdraw': 'Took a lot out of use',
   'instrument.add': 'Added an instrument',
   'instrument.check': 'Checked an instrument',

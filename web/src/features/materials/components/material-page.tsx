@@ -1,5 +1,11 @@
 import { useQuery } from '@tanstack/react-query'
-import { ANALYTE_NAMES, getMaterial, listMaterials, withdrawMaterial } from '@weirlight/shared/contracts'
+import {
+  ANALYTE_NAMES,
+  finishMaterial,
+  getMaterial,
+  listMaterials,
+  withdrawMaterial,
+} from '@weirlight/shared/contracts'
 import { Button } from 'antd'
 import { useState } from 'react'
 import { Link } from 'react-router-dom'
@@ -16,7 +22,7 @@ import {
   Strip,
   UsedIn,
 } from '../../../ui'
-import { ReasonDialog } from '../../../ui/dialogs'
+import { ConfirmDialog, ReasonDialog } from '../../../ui/dialogs'
 import { materialQuery, type MaterialView } from '../api/material-queries'
 import { KIND_WORDS, strengthWords, usableMark } from '../material-words'
 import { materialColumns } from './material-columns'
@@ -157,6 +163,11 @@ function LotActions({ lot }: { lot: MaterialView }) {
   const may = useCan()
   const notice = useNotice()
   const [isAsking, setAsking] = useState(false)
+  const [isEnding, setEnding] = useState(false)
+  const finish = useCall(finishMaterial, {
+    invalidates: [getMaterial, listMaterials],
+    onDone: () => notice.done(`${lot.number} is used up.`),
+  })
   const withdraw = useCall(withdrawMaterial, {
     invalidates: [getMaterial, listMaterials],
     onDone: () => notice.done(`${lot.number} is withdrawn.`),
@@ -167,11 +178,22 @@ function LotActions({ lot }: { lot: MaterialView }) {
       <Link className="button" to={`${paths.newMaterial}?from=${lot.id}`}>
         Make a lot from it
       </Link>
+      {lot.state === 'in-use' && <Button onClick={() => setEnding(true)}>Used up</Button>}
       {lot.state !== 'withdrawn' && (
         <Button danger onClick={() => setAsking(true)}>
           Take out of use
         </Button>
       )}
+      <ConfirmDialog
+        isOpen={isEnding}
+        onClose={() => setEnding(false)}
+        title={`${lot.number} is used up`}
+        consequences={[
+          'From now on it cannot be chosen for a calibration or a batch. What was made with it stays as it is.',
+        ]}
+        actionLabel="Record it"
+        onConfirm={() => finish.mutateAsync({ params: { id: lot.id }, body: { version: lot.version } })}
+      />
       <ReasonDialog
         isOpen={isAsking}
         onClose={() => setAsking(false)}
