@@ -19,6 +19,9 @@ export interface MolarAbsorptivityInput {
 /**
  * Molar absorptivity from the slope of a calibration: epsilon = slope * 1000 * M / b (Beer-Lambert law).
  *
+ * In print the unit goes astray: one restatement of 3500-Cr B gives 40 000 L/(g cm), 7196A gives it per gram-atom. Here it
+ * is L/(mol cm) throughout; per gram it would be larger by the molar mass, 52 for chromium.
+ *
  * Source: definition (IUPAC, molar decadic absorption coefficient); check values in the project's iron set:
  * 0.19697 A per mg/L in 1 cm is 11 000 L/(mol cm).
  *

@@ -37,23 +37,12 @@ export function validationDocument(
         text: 'Each case gives a function of the engine the published data and compares what it returns with the published answer. The mark says how the answer is known: read in the document, read second-hand, from memory, computed, common practice of the trade, or constructed.',
         margin: [0, 0, 0, 10],
       },
+      ...failures(report),
       ...[...sources].flatMap(([source, rows]): Content[] => [
         { text: source, bold: true, fontSize: 8.5, margin: [0, 8, 0, 2] },
-        {
-          table: {
-            headerRows: 1,
-            widths: ['*', 110, 80, 80, 55, 55, 34],
-            body: [
-              ['Case', 'Function · value', 'Expected', 'Got', 'Difference', 'Tolerance', 'Verdict'].map(
-                (text) => ({ text, color: QUIET }) as TableCell,
-              ),
-              ...rows.flatMap((row) =>
-                row.checks.map((check, index) => line({ row, check, isFirst: index === 0 })),
-              ),
-            ],
-          },
-          layout: 'lightHorizontalLines',
-        },
+        table(
+          rows.flatMap((row) => row.checks.map((check, index) => line({ row, check, isFirst: index === 0 }))),
+        ),
       ]),
     ],
     footer: {
@@ -65,6 +54,38 @@ export function validationDocument(
         { text: 'Page {page} of {pages}', alignment: 'right' },
       ],
     },
+  }
+}
+
+/** What failed stands first, where nobody has to look for it among some hundred pages. */
+function failures(report: ValidationReport): Content[] {
+  const failed = report.rows.filter((row) => row.verdict === 'fail')
+  if (failed.length === 0) return []
+  return [
+    { text: 'Failed', bold: true, fontSize: 11, color: ABOVE, margin: [0, 4, 0, 2] },
+    {
+      text: 'Do not release results with these calculations until each is explained.',
+      margin: [0, 0, 0, 4],
+    },
+    table(
+      failed.flatMap((row) =>
+        row.checks
+          .filter((check) => check.verdict === 'fail')
+          .map((check, index) => line({ row, check, isFirst: index === 0 })),
+      ),
+    ),
+  ]
+}
+
+function table(lines: TableCell[][]): Content {
+  const heads = ['Case', 'Function · value', 'Expected', 'Got', 'Difference', 'Tolerance', 'Verdict']
+  return {
+    table: {
+      headerRows: 1,
+      widths: ['*', 110, 80, 80, 55, 55, 34],
+      body: [heads.map((text) => ({ text, color: QUIET }) as TableCell), ...lines],
+    },
+    layout: 'lightHorizontalLines',
   }
 }
 

@@ -1,4 +1,5 @@
 import { useQuery } from '@tanstack/react-query'
+import { ENGINE_VERSION } from '@weirlight/shared/assay'
 import {
   listValidationRuns,
   runValidation,
@@ -9,6 +10,7 @@ import {
 import { Button } from 'antd'
 import { asProblem, hrefFor, queryFor, useCall, useCan, useLaboratoryTime, useNotice } from '../../../lib'
 import { Bar, DataTable, Failed, StatusTag, Strip, type Column } from '../../../ui'
+import './validation.css'
 
 type Run = ResponseOf<typeof listValidationRuns>['items'][number]
 
@@ -63,15 +65,12 @@ export function ValidationRuns() {
     },
     {
       key: 'sha',
-      title: 'SHA-256',
+      title: 'SHA-256 of the JSON',
       isSecondary: true,
-      cell: (row) => (
-        <code className="note" title={row.sha256}>
-          {row.sha256.slice(0, 16)}…
-        </code>
-      ),
+      cell: (row) => <code className="run-hash">{row.sha256}</code>,
     },
   ]
+  const last = query.data?.items[0]
   return (
     <>
       <Bar
@@ -87,6 +86,12 @@ export function ValidationRuns() {
       {start.error && (
         <Strip tone="above" isAlert>
           {start.error.message}
+        </Strip>
+      )}
+      {last && last.engineVersion !== ENGINE_VERSION && (
+        <Strip tone="caution">
+          The calculations have changed since the last run, from {last.engineVersion} to {ENGINE_VERSION}. Run
+          the validation before results are released with them.
         </Strip>
       )}
       {query.isError && !query.data ? (
