@@ -93,7 +93,7 @@ export function FilterDay({ label, value, onChange }: ControlProps) {
         className="field"
         inputMode="numeric"
         autoComplete="off"
-        placeholder="2026-12-01"
+        placeholder="yyyy-mm-dd"
         style={{ width: 118 }}
         value={text}
         aria-invalid={isOdd || undefined}
