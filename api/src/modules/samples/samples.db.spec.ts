@@ -38,7 +38,7 @@ describe('receiving', () => {
     expect(iron).toMatchObject({ analyte: 'Fe', state: 'requested', batchId: null, resultId: null })
     // 180 days from collection: 40 CFR 136.3 Table II, as read in fixtures/reference
     expect(Date.parse(iron?.holding.dueAt ?? '') - Date.parse(form.collectedAt)).toBe(180 * 24 * HOUR)
-    expect(sample.holding?.rule).toContain('metals-in-acid')
+    expect(sample.holding?.rule).toContain('metals in acid')
     expect(await agent.call(getSample, { params: { id: sample.id } })).toMatchObject({
       number: sample.number,
     })
