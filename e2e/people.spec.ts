@@ -65,6 +65,18 @@ test('the administrator invites by e-mail, gives a role, and disables: signed ou
     await expect(page.getByRole('link', { name: 'History' })).toBeVisible()
   })
 
+  await test.step('mails a link to a new passphrase', async () => {
+    await giveReason(desk, {
+      open: 'Send a new-passphrase link',
+      act: 'Mail the link',
+      reason: 'Forgot it on holiday.',
+    })
+    const mail = await mailbox.read({ to: email, about: '/reset/' })
+    const forgetful = await anyone()
+    await forgetful.goto(mailbox.link(mail, /https?:\/\/\S+\/reset\/\S+/))
+    await expect(forgetful.getByLabel('New passphrase', { exact: true })).toBeVisible()
+  })
+
   await test.step('disables: signed out at once, and in no more', async () => {
     await giveReason(desk, { open: 'Disable', act: 'Disable', reason: 'Left the laboratory.' })
     await expect(desk.getByText('Disabled', { exact: true }).first()).toBeVisible()

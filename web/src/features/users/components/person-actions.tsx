@@ -30,7 +30,9 @@ export function PersonActions({ person }: { person: UserView }) {
     <>
       <Button onClick={() => setAsked('change')}>Change</Button>
       {person.status === 'invited' && <Button onClick={() => setAsked('invite')}>Invite again</Button>}
-      {person.status === 'active' && <Button onClick={() => setAsked('reset')}>New passphrase</Button>}
+      {person.status === 'active' && (
+        <Button onClick={() => setAsked('reset')}>Send a new-passphrase link</Button>
+      )}
       {person.status === 'disabled' ? (
         <Button onClick={() => setAsked('enable')}>Enable</Button>
       ) : (
