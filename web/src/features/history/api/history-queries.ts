@@ -3,6 +3,7 @@ import {
   listClients,
   listHistory,
   listMethods,
+  listProgrammes,
   listSeals,
   type HistoryRow,
 } from '@weirlight/shared/contracts'
@@ -34,3 +35,4 @@ export const sealPages = () => pagesFor(listSeals, { query: {} })
 /** names for the references that entries hold */
 export const clientNamesQuery = queryFor(listClients)
 export const methodNamesQuery = queryFor(listMethods)
+export const limitNamesQuery = queryFor(listProgrammes)

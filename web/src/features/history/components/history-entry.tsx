@@ -2,6 +2,7 @@ import { ROLE_NAMES } from '@weirlight/shared/permissions'
 import { Fragment, useId, useState } from 'react'
 import { Link } from 'react-router-dom'
 import { useLaboratoryTime } from '../../../lib'
+import { unbroken } from '../../../ui'
 import type { HistoryRow } from '../api/history-queries'
 import { actionWord } from '../words/action-words'
 import { fieldsOf, fieldWord, isEmptyValue } from '../words/field-words'
@@ -47,14 +48,14 @@ export function HistoryEntry({ row, previous, names }: HistoryEntryProps) {
           </button>
         </td>
         <td>
-          {row.actorName}
+          <span className="nowrap">{row.actorName}</span>
           <br />
           <span className="note">{ROLE_WORDS[row.actorRole] ?? 'the system itself'}</span>
         </td>
         <td>
           {isSameAct ? <span className="quiet">″ {actionWord(row.action)}</span> : actionWord(row.action)}
         </td>
-        <td>{to ? <Link to={to}>{what}</Link> : what}</td>
+        <td>{to ? <Link to={to}>{unbroken(what)}</Link> : unbroken(what)}</td>
         <td>
           <Summary row={row} names={names} />
         </td>

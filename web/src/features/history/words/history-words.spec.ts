@@ -9,6 +9,7 @@ const names = {
   people: new Map([['7', 'Tomas Lindqvist']]),
   clients: new Map([['3', 'Pellam Hills Water Board']]),
   methods: new Map([['1', 'Iron by 1,10-phenanthroline']]),
+  limits: new Map([['5', 'Secondary level, 0.3 mg/L']]),
 }
 const say = (thing: string, field: string, value: unknown) =>
   valueWord({ thing, field, value, names, at: (instant) => `at ${instant}` })
@@ -30,6 +31,7 @@ describe('the history in words', () => {
     expect(say('samples', 'received_by', 99)).toBe('person 99')
     expect(say('samples', 'client_id', 3)).toBe('Pellam Hills Water Board')
     expect(say('determinations', 'method_id', '1')).toBe('Iron by 1,10-phenanthroline')
+    expect(say('alerts', 'limit_id', 5)).toBe('Secondary level, 0.3 mg/L')
     expect(say('samples', 'collected_at', '2026-11-30T13:15:00+00:00')).toBe('at 2026-11-30T13:15:00+00:00')
     expect(say('users', 'password_hash', '(hidden)')).toBe('not shown')
     expect(say('limits', 'unit', 'ug/L')).toBe('µg/L')

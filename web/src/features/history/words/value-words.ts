@@ -24,6 +24,7 @@ export interface Names {
   people: ReadonlyMap<string, string>
   clients: ReadonlyMap<string, string>
   methods: ReadonlyMap<string, string>
+  limits: ReadonlyMap<string, string>
 }
 
 const INSTANT = /^\d{4}-\d{2}-\d{2}T\d{2}:\d{2}:\d{2}(\.\d+)?([+-]\d{2}:?\d{2}|Z)$/
@@ -49,6 +50,7 @@ export function valueWord({ thing, field, value, names, at }: Given): string | n
   if (PERSON_FIELD.test(field)) return names.people.get(text) ?? `person ${text}`
   if (field === 'client_id') return names.clients.get(text) ?? `client ${text}`
   if (field === 'method_id') return names.methods.get(text) ?? `method ${text}`
+  if (field === 'limit_id') return names.limits.get(text) ?? `limit ${text}`
   if (field === 'state') return STATES[thing]?.[text] ?? text.replaceAll('-', ' ')
   if (field === 'role') return ROLE_WORDS[text] ?? text
   if (field === 'analyte') return METAL_WORDS[text] ?? text
