@@ -130,12 +130,12 @@ export class JobsService implements OnApplicationBootstrap, BeforeApplicationShu
 
   private async work({ job, run }: FoundHandler): Promise<void> {
     for (let n = 0; n < job.concurrency; n += 1) {
-      let workerId: string | undefined
+      const worker = { id: '' }
       // more may wait: without this the worker would rest between two jobs until its next poll
       const goOn = () => {
-        if (workerId !== undefined) this.boss.notifyWorker(workerId)
+        if (worker.id !== '') this.boss.notifyWorker(worker.id)
       }
-      workerId = await this.boss.work<Envelope>(
+      worker.id = await this.boss.work<Envelope>(
         job.name,
         {
           batchSize: 1,
