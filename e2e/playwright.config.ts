@@ -29,7 +29,8 @@ export default defineConfig({
     timezoneId: 'Pacific/Auckland',
     actionTimeout: 20_000 * patience,
     navigationTimeout: 40_000 * patience,
-    trace: 'retain-on-failure',
+    // recording costs as much as the tests themselves: E2E_TRACE=1 when a failure needs more than its picture
+    trace: process.env['E2E_TRACE'] ? 'retain-on-failure' : 'off',
     screenshot: 'only-on-failure',
   },
   projects: [
