@@ -27,6 +27,8 @@ export default defineConfig({
     locale: 'en-GB',
     // by the server's clock and the laboratory's zone, never by the browser's
     timezoneId: 'Pacific/Auckland',
+    // a click in the tenth of a second in which a dialog opens would miss its button
+    contextOptions: { reducedMotion: 'reduce' },
     actionTimeout: 20_000 * patience,
     navigationTimeout: 40_000 * patience,
     // recording costs as much as the tests themselves: E2E_TRACE=1 when a failure needs more than its picture

@@ -1,4 +1,4 @@
-import { useCallback, useMemo } from 'react'
+import { useCallback, useEffect, useMemo, useRef } from 'react'
 import { useSearchParams } from 'react-router-dom'
 
 /**
@@ -9,6 +9,18 @@ export function useFilters<T extends Record<string, string>>(
   defaults: T,
 ): [filters: T, change: (part: Partial<T>) => void, clear: () => void] {
   const [search, setSearch] = useSearchParams()
+  // two filters may change before the address has followed the first
+  const latest = useRef(search)
+  useEffect(() => {
+    latest.current = search
+  }, [search])
+  const go = useCallback(
+    (next: URLSearchParams) => {
+      latest.current = next
+      setSearch(next, { replace: true })
+    },
+    [setSearch],
+  )
   // the caller may write the defaults in place
   const shape = JSON.stringify(defaults)
   const filters = useMemo(() => {
@@ -20,25 +32,18 @@ export function useFilters<T extends Record<string, string>>(
   const change = useCallback(
     (part: Partial<T>) => {
       const known = JSON.parse(shape) as T
-      setSearch(
-        (current) => {
-          const next = new URLSearchParams(current)
-          for (const [name, value] of Object.entries(part)) {
-            if (value === undefined || value === '' || value === known[name]) next.delete(name)
-            else next.set(name, String(value))
-          }
-          return next
-        },
-        { replace: true },
-      )
+      const next = new URLSearchParams(latest.current)
+      for (const [name, value] of Object.entries(part)) {
+        if (value === undefined || value === '' || value === known[name]) next.delete(name)
+        else next.set(name, String(value))
+      }
+      go(next)
     },
-    [setSearch, shape],
+    [go, shape],
   )
   const clear = useCallback(() => {
     const names = Object.keys(JSON.parse(shape) as T)
-    setSearch((current) => new URLSearchParams([...current].filter(([name]) => !names.includes(name))), {
-      replace: true,
-    })
-  }, [setSearch, shape])
+    go(new URLSearchParams([...latest.current].filter(([name]) => !names.includes(name))))
+  }, [go, shape])
   return [filters, change, clear]
 }
