@@ -1,4 +1,4 @@
-import { useEffect, useState, type ReactNode } from 'react'
+import { useCallback, useEffect, useRef, useState, type ReactNode } from 'react'
 import { parseDay } from '../lib/time'
 
 /** The row of filters over a list. */
@@ -41,7 +41,7 @@ export function FilterSelect(
 
 const PAUSE = 300
 
-/** Text filters by itself shortly after the last key, or at once with Enter. */
+/** Text filters by itself shortly after the last key, or at once with Enter or on leaving. */
 export function FilterText({
   label,
   value,
@@ -56,11 +56,21 @@ export function FilterText({
     setSeen(value)
     setText(value)
   }
+  const sent = useRef(value)
+  useEffect(() => {
+    sent.current = value
+  }, [value])
+  const send = useCallback(() => {
+    const wanted = text.trim()
+    if (sent.current === wanted) return
+    sent.current = wanted
+    onChange(wanted)
+  }, [text, onChange])
   useEffect(() => {
     if (text === value) return
-    const timer = setTimeout(() => onChange(text.trim()), PAUSE)
+    const timer = setTimeout(send, PAUSE)
     return () => clearTimeout(timer)
-  }, [text, value, onChange])
+  }, [text, value, send])
   return (
     <label>
       {label}
@@ -71,7 +81,9 @@ export function FilterText({
         value={text}
         placeholder={placeholder}
         onChange={(event) => setText(event.target.value)}
-        onKeyDown={(event) => event.key === 'Enter' && onChange(text.trim())}
+        onKeyDown={(event) => event.key === 'Enter' && send()}
+        // whoever goes on to a link must not be called back by the filter
+        onBlur={send}
       />
     </label>
   )
