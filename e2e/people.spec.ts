@@ -51,7 +51,9 @@ test('the administrator invites by e-mail, gives a role, and disables: signed ou
   await test.step('gives another role: the old rights end at once', async () => {
     await desk.getByLabel('Name or e-mail').fill(email)
     await expect(desk).toHaveURL(/find=/)
+    await expect(desk.getByRole('link', { name: 'Nadia Roth' })).toHaveCount(1)
     await desk.getByRole('link', { name: 'Nadia Roth' }).click()
+    await expect(desk.getByText('Active', { exact: true }).first()).toBeVisible()
     await desk.getByRole('button', { name: 'Change', exact: true }).click()
     const dialog = desk.getByRole('dialog')
     await dialog.getByLabel('Role').selectOption({ label: 'Auditor' })
