@@ -22,6 +22,8 @@ export interface FormTrouble {
   problem: ProblemError | null
   /** complaints that belong to no field of this form */
   homeless: readonly string[]
+  /** what is entered stays on this computer when the page is loaded again */
+  isKept: boolean
   blocker: ReturnType<typeof useLeaveWarning>['blocker']
 }
 
@@ -104,6 +106,7 @@ export function useEndpointForm<E extends Endpoint, Values extends object>(
     isBusy: mutation.isPending,
     isDirty,
     hasDraft,
+    isKept: draft !== undefined,
     discardDraft: () => {
       kept.clear()
       form.resetFields()

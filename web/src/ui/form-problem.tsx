@@ -5,7 +5,7 @@ import { Strip } from './sheet'
 
 /** Above a form: what belongs to no field of it, and the question before it is left half filled. */
 export function FormProblem({ form }: { form: FormTrouble }) {
-  const { problem, homeless, blocker } = form
+  const { problem, homeless, isKept, blocker } = form
   const { at } = useLaboratoryTime()
   const isPlaced = problem !== null && problem.errors.length > 0 && homeless.length === 0
   return (
@@ -18,7 +18,10 @@ export function FormProblem({ form }: { form: FormTrouble }) {
           {problem?.conflict && (
             <p>
               Changed by {problem.conflict.changedBy}, {at(problem.conflict.changedAt)}. Load the page again
-              to see it; what you entered here stays as a draft.
+              to see it;{' '}
+              {isKept
+                ? 'what you entered here stays as a draft.'
+                : 'note what you entered here first, it is not kept.'}
             </p>
           )}
           {homeless.length > 0 && (
