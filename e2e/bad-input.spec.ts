@@ -1,5 +1,6 @@
 import {
   getBatch,
+  getSample,
   getSession,
   listSamples,
   previewManifest,
@@ -242,8 +243,10 @@ test('a form submitted twice makes one sample', async ({ as, apiOf }) => {
     data: bodies[0] ?? '',
   })
   expect(await again.json()).toMatchObject({ number: await heading.innerText() })
-  const { items } = await api.call(listSamples, { query: { limit: 50 } })
-  expect(items.filter((each) => each.pointCode === 'AV-05' && each.state === 'received').length).toBe(1)
+  const { pointId } = JSON.parse(bodies[0] ?? '') as { pointId: string }
+  const { items } = await api.call(listSamples, { query: { pointId, limit: 50 } })
+  const views = await Promise.all(items.map(({ id }) => api.call(getSample, { params: { id } })))
+  expect(views.filter((each) => each.remarks === remark)).toHaveLength(1)
 })
 
 test('files that cannot be taken: empty, too large, mislabelled, old, an unknown column', async ({

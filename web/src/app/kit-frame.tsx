@@ -3,6 +3,7 @@ import { can } from '@weirlight/shared/permissions'
 import { useContext, useMemo } from 'react'
 import { Outlet } from 'react-router-dom'
 import { SessionContext } from '../lib/session'
+import { useMediaQuery } from '../lib/use-media-query'
 import { StoryProvider } from '../ui/story'
 import { storySlot } from './story-slot'
 import { giveStylesTheNonce } from './style-nonce'
@@ -19,12 +20,13 @@ export function KitFrame() {
   // null on the pages without a session
   const session = useContext(SessionContext)
   const mayReadStories = session !== null && can(session, 'story.read')
+  const isStill = useMediaQuery('(prefers-reduced-motion: reduce)')
   const config = useMemo(
     () => ({
-      ...antdTheme(tokens),
+      ...antdTheme(tokens, { isStill }),
       algorithm: tokens === DARK ? theme.darkAlgorithm : theme.defaultAlgorithm,
     }),
-    [tokens],
+    [tokens, isStill],
   )
   return (
     <ConfigProvider

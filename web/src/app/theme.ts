@@ -90,7 +90,8 @@ export function applyTokens(tokens: Tokens): void {
 
 export const FONT = 'Roboto, "Helvetica Neue", Arial, sans-serif'
 
-export function antdTheme(tokens: Tokens): ThemeConfig {
+/** `isStill`: without motion, for people whose system asks for less of it. */
+export function antdTheme(tokens: Tokens, { isStill }: { isStill: boolean }): ThemeConfig {
   return {
     hashed: false,
     token: {
@@ -133,6 +134,7 @@ export function antdTheme(tokens: Tokens): ThemeConfig {
       controlHeight: 34,
       boxShadow: 'none',
       boxShadowSecondary: `0 4px 16px ${tokens.shade}`,
+      motion: !isStill,
       motionDurationMid: '0.1s',
       motionDurationSlow: '0.15s',
       wireframe: false,

@@ -1,13 +1,6 @@
-import { useSyncExternalStore } from 'react'
-
-const query = window.matchMedia('(max-width: 640px)')
-
-function subscribe(listener: () => void): () => void {
-  query.addEventListener('change', listener)
-  return () => query.removeEventListener('change', listener)
-}
+import { useMediaQuery } from '../../../lib/use-media-query'
 
 /** So narrow that label and readings alone have room. The same width stands in batches.css. */
 export function useIsPhone(): boolean {
-  return useSyncExternalStore(subscribe, () => query.matches)
+  return useMediaQuery('(max-width: 640px)')
 }
