@@ -10,7 +10,7 @@ const skipped = new Set(['node_modules', 'dist', 'coverage', 'test-results', 'pi
 const filesBelow = (folder) => {
   if (!existsSync(folder)) return []
   return readdirSync(folder, { withFileTypes: true })
-    .filter((entry) => !skipped.has(entry.name) && !/\.spec\.tsx?$/.test(entry.name))
+    .filter((entry) => !skipped.has(entry.name) && !/\.(spec|test-support)\.tsx?$/.test(entry.name))
     .flatMap((entry) => {
       const path = join(folder, entry.name)
       return entry.isDirectory() ? filesBelow(path) : [path]

@@ -9,6 +9,7 @@ import { configureApp, newAdapter } from '../platform/http/app.js'
 import { RouteCheck } from '../platform/http/route-check.js'
 import { PlatformModule } from '../platform/platform.module.js'
 import { Agent, sessionCookie } from './agent.js'
+import type { FakeSmtp } from './fake-smtp.js'
 import { cloneDatabase, type TestDatabase } from './test-database.js'
 
 export interface TestAppOptions {
@@ -86,14 +87,21 @@ export async function createTestApp(options: TestAppOptions = {}): Promise<TestA
   }
 }
 
-/** `const at = useTestApp({ imports: [SamplesModule] })` at the top of a test file; `at()` inside tests. */
-export function useTestApp(options: TestAppOptions = {}): () => TestApp {
+/**
+ * `const at = useTestApp({ imports: [SamplesModule] })` at the top of a test file; `at()` inside tests. Mail goes to `smtp`, which
+ * lives as long as the application.
+ */
+export function useTestApp({ smtp, ...options }: TestAppOptions & { smtp?: FakeSmtp } = {}): () => TestApp {
   let built: TestApp | undefined
   beforeAll(async () => {
-    built = await createTestApp(options)
+    await smtp?.start()
+    built = await createTestApp(
+      smtp ? { ...options, settings: { ...options.settings, smtpUrl: smtp.url } } : options,
+    )
   })
   afterAll(async () => {
     await built?.close()
+    await smtp?.stop()
   })
   return () => {
     if (!built) throw new Error('The test application is there inside tests and hooks.')

@@ -1,50 +1,49 @@
 import { listMail, retryMail } from '@weirlight/shared/contracts'
-import { afterAll, beforeAll, describe, expect, it } from 'vitest'
+import { beforeAll, describe, expect, it } from 'vitest'
 import { JobsService, MailService } from '../../platform/index.js'
 import { sendMail } from '../../platform/mail/mail.jobs.js'
 import type { Agent } from '../../testing/agent.js'
 import { FakeSmtp } from '../../testing/fake-smtp.js'
 import { aUser } from '../../testing/people.js'
-import { createTestApp, type TestApp } from '../../testing/test-app.js'
+import { useTestApp } from '../../testing/test-app.js'
 import { OutgoingMailModule } from './index.js'
 
 const smtp = new FakeSmtp()
-let at: TestApp
+const at = useTestApp({ imports: [OutgoingMailModule], smtp })
 let manager: Agent
 const ids: string[] = []
 
 beforeAll(async () => {
-  await smtp.start()
-  at = await createTestApp({ imports: [OutgoingMailModule], settings: { smtpUrl: smtp.url } })
-  manager = await at.as(await aUser(at.database.db, { role: 'qa-manager' }))
+  manager = await at().as(await aUser(at().database.db, { role: 'qa-manager' }))
   for (const name of ['one', 'two', 'three']) {
-    await at.database.db.unwatched((trx) =>
-      at.get(MailService).queue(trx, {
-        key: `test:${name}`,
-        to: `${name}@utility.example`,
-        subject: `Subject ${name}`,
-        text: 'x',
-        about: { kind: 'alert', id: '7' },
-      }),
+    await at().database.db.unwatched((trx) =>
+      at()
+        .get(MailService)
+        .queue(trx, {
+          key: `test:${name}`,
+          to: `${name}@utility.example`,
+          subject: `Subject ${name}`,
+          text: 'x',
+          about: { kind: 'alert', id: '7' },
+        }),
     )
-    const row = await at.database.db.fresh
-      .selectFrom('mailMessages')
+    const row = await at()
+      .database.db.fresh.selectFrom('mailMessages')
       .select('id')
       .where('key', '=', `test:${name}`)
       .executeTakeFirstOrThrow()
     ids.push(row.id)
   }
 })
-afterAll(async () => {
-  await at.close()
-  await smtp.stop()
-})
-const send = (id: string | undefined) => at.get(JobsService).runNow(sendMail, { id: id ?? '' })
+const send = (id: string | undefined) =>
+  at()
+    .get(JobsService)
+    .runNow(sendMail, { id: id ?? '' })
 /** Refused for good three times, each time the next try is due at once. */
 async function fail(id: string | undefined) {
   smtp.answers = { RCPT: '550 no such box' }
   for (let n = 0; n < 3; n += 1) {
-    await at.database.owner.unwatched((trx) =>
+    await at().database.owner.unwatched((trx) =>
       trx
         .updateTable('mailMessages')
         .set({ nextAttemptAt: new Date(0) })
@@ -95,7 +94,7 @@ describe('outgoing mail', () => {
 
   it('pressed by two at once leaves once', async () => {
     await fail(ids[2])
-    const other = await at.as(await aUser(at.database.db, { role: 'administrator' }))
+    const other = await at().as(await aUser(at().database.db, { role: 'administrator' }))
     await Promise.all([
       manager.send(retryMail, { params: { id: ids[2] ?? '' } }),
       other.send(retryMail, { params: { id: ids[2] ?? '' } }),

@@ -1,6 +1,6 @@
-import { afterAll, afterEach, beforeAll, describe, expect, it } from 'vitest'
+import { afterEach, describe, expect, it } from 'vitest'
 import { FakeSmtp } from '../../testing/fake-smtp.js'
-import { createTestApp, type TestApp } from '../../testing/test-app.js'
+import { useTestApp } from '../../testing/test-app.js'
 import { SYSTEM } from '../database/acting.js'
 import { JobsService } from '../jobs/jobs.service.js'
 import { sendMail, sweepMail } from './mail.jobs.js'
@@ -8,49 +8,43 @@ import { MailRepository } from './mail.repository.js'
 import { MailService, type MailToQueue } from './mail.service.js'
 
 const smtp = new FakeSmtp()
-let at: TestApp
+const at = useTestApp({ imports: [], smtp })
 
-beforeAll(async () => {
-  await smtp.start()
-  at = await createTestApp({ imports: [], settings: { smtpUrl: smtp.url } })
-})
 afterEach(() => {
   smtp.received.length = 0
   smtp.answers = {}
   smtp.onData = () => Promise.resolve()
-})
-afterAll(async () => {
-  await at.close()
-  await smtp.stop()
 })
 
 let count = 0
 async function queued(changes: Partial<MailToQueue> = {}): Promise<string> {
   count += 1
   const key = changes.key ?? `test:${count}`
-  await at.database.db.transaction(SYSTEM, 'test.mail', null, (trx) =>
-    at.get(MailService).queue(trx, {
-      key,
-      to: 'anna@town.example',
-      subject: 'Iron above the limit – S-26-00001',
-      text: 'Please look.',
-      ...changes,
-    }),
+  await at().database.db.transaction(SYSTEM, 'test.mail', null, (trx) =>
+    at()
+      .get(MailService)
+      .queue(trx, {
+        key,
+        to: 'anna@town.example',
+        subject: 'Iron above the limit – S-26-00001',
+        text: 'Please look.',
+        ...changes,
+      }),
   )
   return (
-    await at.database.db.read
-      .selectFrom('mailMessages')
+    await at()
+      .database.db.read.selectFrom('mailMessages')
       .select('id')
       .where('key', '=', key)
       .executeTakeFirstOrThrow()
   ).id
 }
 const stateOf = (id: string) =>
-  at.database.db.read.selectFrom('mailMessages').selectAll().where('id', '=', id).executeTakeFirstOrThrow()
-const send = (id: string) => at.get(JobsService).runNow(sendMail, { id })
-const sweep = () => at.get(JobsService).runNow(sweepMail, {})
+  at().database.db.read.selectFrom('mailMessages').selectAll().where('id', '=', id).executeTakeFirstOrThrow()
+const send = (id: string) => at().get(JobsService).runNow(sendMail, { id })
+const sweep = () => at().get(JobsService).runNow(sweepMail, {})
 async function jobsFor(id: string): Promise<number> {
-  const { rows } = await at.database.owner.pool.query(
+  const { rows } = await at().database.owner.pool.query(
     `select 1 from pgboss.job where name = 'mail.send' and data -> 'input' ->> 'id' = $1`,
     [id],
   )
@@ -59,13 +53,15 @@ async function jobsFor(id: string): Promise<number> {
 
 describe('mail', () => {
   it('leaves once, with its attachment and a fixed Message-ID', async () => {
-    at.get(MailService).attach('note', (id) =>
-      Promise.resolve({
-        filename: `note-${id}.txt`,
-        content: Buffer.from(`note ${id}`),
-        contentType: 'text/plain',
-      }),
-    )
+    at()
+      .get(MailService)
+      .attach('note', (id) =>
+        Promise.resolve({
+          filename: `note-${id}.txt`,
+          content: Buffer.from(`note ${id}`),
+          contentType: 'text/plain',
+        }),
+      )
     const id = await queued({ attachments: [{ kind: 'note', id: '5' }], html: '<p>Please look.</p>' })
     await Promise.all([send(id), send(id), send(id), send(id)])
     await send(id)
@@ -84,13 +80,13 @@ describe('mail', () => {
     await queued({ key: 'alert:1:anna', subject: 'Again' })
     expect(await jobsFor(id)).toBe(1)
     await expect(
-      at.database.db.transaction(SYSTEM, 'test.mail', null, async (trx) => {
-        await at.get(MailService).queue(trx, { key: 'undone', to: 'a@b.example', subject: 'x', text: 'x' })
+      at().database.db.transaction(SYSTEM, 'test.mail', null, async (trx) => {
+        await at().get(MailService).queue(trx, { key: 'undone', to: 'a@b.example', subject: 'x', text: 'x' })
         throw new Error('undone')
       }),
     ).rejects.toThrow('undone')
-    const rows = await at.database.db.read
-      .selectFrom('mailMessages')
+    const rows = await at()
+      .database.db.read.selectFrom('mailMessages')
       .select('id')
       .where('key', '=', 'undone')
       .execute()
@@ -109,7 +105,7 @@ describe('mail', () => {
     await smtp.start()
     await send(id) // not due yet
     expect(smtp.received).toHaveLength(0)
-    await at.database.db.unwatched((trx) => at.get(MailService).retry(trx, id))
+    await at().database.db.unwatched((trx) => at().get(MailService).retry(trx, id))
     await send(id)
     expect(smtp.received).toHaveLength(1)
     expect(await stateOf(id)).toMatchObject({ state: 'sent' })
@@ -117,11 +113,11 @@ describe('mail', () => {
 
   it('whose sender died before the mail server had it is found by the sweep and leaves once', async () => {
     const id = await queued()
-    const { clock, owner } = at.database
+    const { clock, owner } = at().database
     // the claim of a process that died two minutes ago; only the owner's clock can write that time
     clock.pin(new Date(Date.now() - 120_000))
     try {
-      await owner.transaction(SYSTEM, 'test.mail', null, (trx) => at.get(MailRepository).claim(trx, id))
+      await owner.transaction(SYSTEM, 'test.mail', null, (trx) => at().get(MailRepository).claim(trx, id))
     } finally {
       clock.unpin()
     }
@@ -153,7 +149,7 @@ describe('mail', () => {
     const id = await queued()
     smtp.answers = { RCPT: '550 no such box' }
     for (let n = 0; n < 3; n += 1) {
-      await at.database.owner.unwatched((trx) =>
+      await at().database.owner.unwatched((trx) =>
         trx
           .updateTable('mailMessages')
           .set({ nextAttemptAt: new Date(0) })
@@ -166,7 +162,7 @@ describe('mail', () => {
     expect(failed).toMatchObject({ state: 'failed', attempts: 3 })
     expect(failed.lastError).toContain('no such box')
     smtp.answers = {}
-    await at.database.db.unwatched((trx) => at.get(MailService).retry(trx, id))
+    await at().database.db.unwatched((trx) => at().get(MailService).retry(trx, id))
     await send(id)
     expect(await stateOf(id)).toMatchObject({ state: 'sent' })
     expect(smtp.received).toHaveLength(1)
@@ -182,7 +178,7 @@ describe('mail', () => {
   })
 
   it('of the loaded past is kept as sent and does not leave', async () => {
-    const { clock } = at.database
+    const { clock } = at().database
     clock.pin('2026-08-01T08:00:00Z')
     let id: string
     try {
