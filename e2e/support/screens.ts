@@ -57,6 +57,9 @@ const one =
   (needs: Needs, path: (things: Things) => string): Entry =>
   (things) => ({ name: '', path: path(things), needs })
 
+/** An address of the right kind that nothing stands behind. */
+const MISSING = '999999999'
+
 /** Every address of the application: a new one without an entry here does not compile. */
 const ENTRIES: Record<Path, Entry | null> = {
   signIn: one('public', () => paths.signIn),
@@ -67,7 +70,10 @@ const ENTRIES: Record<Path, Entry | null> = {
   checkCode: one('public', ({ code }) => paths.checkCode(code)),
 
   today: one('today.read', () => paths.today),
-  receiving: one('samples.read', () => paths.receiving),
+  receiving: () => [
+    { name: '', path: paths.receiving, needs: 'samples.read' },
+    { name: 'empty', path: `${paths.receiving}?number=S-00-00000`, needs: 'samples.read' },
+  ],
   receive: one('samples.receive', () => paths.receive),
   receiveMany: one('samples.receive', () => paths.receiveMany),
   waiting: one('samples.read', () => paths.waiting),
@@ -75,6 +81,7 @@ const ENTRIES: Record<Path, Entry | null> = {
   sample: ({ sample, undecidedSample }) => [
     { name: 'reported', path: paths.sample(sample), needs: 'samples.read' },
     { name: 'undecided', path: paths.sample(undecidedSample), needs: 'samples.read' },
+    { name: 'missing', path: paths.sample(MISSING), needs: 'samples.read' },
   ],
 
   bench: one('methods.read', () => paths.bench),
@@ -98,6 +105,7 @@ const ENTRIES: Record<Path, Entry | null> = {
     { name: 'draft', path: paths.calibration(draft), needs: 'calibrations.read' },
     { name: 'submitted', path: paths.calibration(submittedCalibration), needs: 'calibrations.read' },
     { name: 'in force', path: paths.calibration(calibrationInForce), needs: 'calibrations.read' },
+    { name: 'missing', path: paths.calibration(MISSING), needs: 'calibrations.read' },
   ],
   batches: one('batches.read', () => paths.batches),
   newBatch: one('batches.run', ({ method }) => `${paths.newBatch}?method=${method}`),
@@ -137,7 +145,10 @@ const ENTRIES: Record<Path, Entry | null> = {
   portalPoints: one('portal.read', () => paths.portalPoints),
   portalPoint: one('portal.read', ({ ownPoint }) => paths.portalPoint(ownPoint)),
   portalAlerts: one('portal.read', () => paths.portalAlerts),
-  portalAlert: one('portal.read', ({ ownAlert }) => paths.portalAlert(ownAlert)),
+  portalAlert: ({ ownAlert }) => [
+    { name: '', path: paths.portalAlert(ownAlert), needs: 'portal.read' },
+    { name: 'missing', path: paths.portalAlert(MISSING), needs: 'portal.read' },
+  ],
 }
 
 const kebab = (text: string) => text.replaceAll(/[A-Z]/g, (letter) => `-${letter.toLowerCase()}`)

@@ -36,10 +36,16 @@ export function chartFrame(colours: ChartColours): EChartsOption {
   }
 }
 
-export function axisLook(colours: ChartColours) {
+/** `interval` of a round axis: its labels then carry the same decimals, 0.10 between 0.05 and 0.15. */
+export function axisLook(colours: ChartColours, interval?: number) {
   return {
     nameTextStyle: { color: colours.quiet, fontSize: TEXT_SIZE },
-    axisLabel: { color: colours.quiet, fontSize: TEXT_SIZE, hideOverlap: true },
+    axisLabel: {
+      color: colours.quiet,
+      fontSize: TEXT_SIZE,
+      hideOverlap: true,
+      ...(interval === undefined ? {} : { formatter: axisNumber(interval) }),
+    },
     axisLine: { show: false },
     axisTick: { show: false },
     splitLine: { show: true, lineStyle: { color: colours.hair } },
@@ -76,11 +82,24 @@ export function roundAxis(values: readonly number[], ticks = 5) {
   const step = ([1, 2, 5, 10].find((factor) => factor * power >= raw * 0.999) ?? 10) * power
   // twelve digits take away the dust of binary arithmetic from the labels
   const clean = (value: number) => Number(value.toPrecision(12))
+  const interval = clean(step)
   return {
     min: clean(Math.floor(low / step + 1e-9) * step),
     max: clean(Math.ceil(high / step - 1e-9) * step),
-    interval: clean(step),
+    interval,
   }
+}
+
+/** A step of 1, 2 or 5 times a power of ten has one digit: its place is the last decimal of every label. */
+function axisNumber(interval: number): (value: number) => string {
+  const decimals = Math.max(0, -Math.floor(Math.log10(interval) + 1e-9))
+  return (value) => fixed(value, Math.min(12, decimals))
+}
+
+/** So many decimals, trailing zeros kept, with a true minus and no minus before zero. */
+export function fixed(value: number, decimals: number): string {
+  const text = value.toFixed(decimals)
+  return Number(text) === 0 ? text.replace('-', '') : text.replace('-', '−')
 }
 
 export interface LimitLine {

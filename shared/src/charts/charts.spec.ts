@@ -3,8 +3,8 @@ import { describe, expect, it } from 'vitest'
 import { curveBand, fitCalibration, predictConcentration } from '../assay/index.js'
 import { calibrationChart, residualsChart } from './calibration-chart.js'
 import { roundAxis, type ChartColours } from './chart-frame.js'
-import { controlChart } from './control-chart.js'
-import { trendChart } from './trend-chart.js'
+import { controlChart, controlNumbers } from './control-chart.js'
+import { drawnLimit, trendChart } from './trend-chart.js'
 
 /* Drawn without a browser, as the PDF does. Numbers are constructed. */
 
@@ -129,11 +129,11 @@ describe('trend chart', () => {
       nonDetect: false,
     },
   ]
-  const limit = { name: 'Secondary level', value: 0.05 }
+  const limit = { name: 'Secondary level', value: 0.05, text: '0.050' }
 
   it('writes the limit at its line and fills only what lies above', () => {
     const svg = draw(trendChart({ points: results, limit, unit: 'mg/L', colours }))
-    expect(texts(svg)).toContain('Secondary level 0.05')
+    expect(texts(svg)).toContain('Secondary level 0.050')
     expect(count(svg, colours.above)).toBeGreaterThanOrEqual(1)
     const quiet = draw(trendChart({ points: results.slice(0, 2), limit: null, unit: 'mg/L', colours }))
     expect(count(quiet, colours.above)).toBe(0)
@@ -164,7 +164,7 @@ describe('control chart', () => {
 
   it('names its lines with their values and fills the signal', () => {
     const svg = draw(controlChart({ points: values, ...limits, unit: 'recovery, %', colours }))
-    for (const text of ['action 109', 'warning 106', 'centre 100', 'warning 94', 'action 91']) {
+    for (const text of ['action 109.0', 'warning 106.0', 'centre 100.0', 'warning 94.0', 'action 91.0']) {
       expect(texts(svg)).toContain(text)
     }
     expect(count(svg, colours.above)).toBeGreaterThan(0)
@@ -180,6 +180,55 @@ describe('control chart', () => {
     }
     draw(controlChart({ points: values, ...none, unit: 'recovery, %', colours }))
     draw(controlChart({ points: [], ...none, unit: 'recovery, %', colours }))
+  })
+})
+
+describe('numbers of a control chart', () => {
+  const points = [{ value: 0.3004 }]
+  it('carry trailing zeros to the second digit of the standard deviation', () => {
+    // 3 s = 0.006, so s = 0.002 and its second digit stands at 0.0001
+    const shown = controlNumbers({ center: 0.3, upperAction: 0.306, points })
+    expect([0.3, 0.306, -0.3, -0.00001].map(shown)).toEqual(['0.3000', '0.3060', '−0.3000', '0.0000'])
+  })
+  it('have four digits of the largest value while there are no limits', () => {
+    const shown = controlNumbers({
+      center: null,
+      upperAction: null,
+      points: [{ value: 98 }, { value: 101.26 }],
+    })
+    expect([98, 101.26].map(shown)).toEqual(['98.0', '101.3'])
+  })
+})
+
+describe('limit of a trend', () => {
+  it('keeps the digits its programme gives it, in either unit', () => {
+    const limit = { name: 'MCL', value: '0.010', unit: 'mg/L' } as const
+    expect(drawnLimit(limit, 'mg/L')).toEqual({ name: 'MCL', value: 0.01, text: '0.010' })
+    expect(drawnLimit(limit, 'ug/L').text).toBe('10')
+    expect(drawnLimit({ name: 'MCL', value: '50', unit: 'ug/L' }, 'mg/L').text).toBe('0.050')
+  })
+})
+
+describe('axis labels', () => {
+  it('carry the decimals of the step', () => {
+    const svg = draw(
+      trendChart({
+        points: [
+          {
+            at: '2026-10-01T08:00:00Z',
+            value: 0.19,
+            text: '0.19',
+            when: '2026-10-01 08:00',
+            verdict: null,
+            nonDetect: false,
+          },
+        ],
+        limit: null,
+        unit: 'mg/L',
+        colours,
+      }),
+    )
+    expect(texts(svg)).toEqual(expect.arrayContaining(['0.00', '0.05', '0.10', '0.15', '0.20']))
   })
 })
 

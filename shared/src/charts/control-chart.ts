@@ -3,6 +3,7 @@ import {
   axisLook,
   chartFrame,
   emptyChart,
+  fixed,
   limitLines,
   roundAxis,
   type ChartColours,
@@ -32,8 +33,9 @@ export interface ControlChartInput {
 export function controlChart(input: ControlChartInput): EChartsOption {
   const { points, colours } = input
   if (points.length === 0) return emptyChart('No control values yet.', colours)
+  const shown = controlNumbers(input)
   const line = (value: number | null, text: string, colour: string, dashed: boolean): LimitLine[] =>
-    value === null ? [] : [{ value, text: `${text} ${short(value)}`, colour, dashed }]
+    value === null ? [] : [{ value, text: `${text} ${shown(value)}`, colour, dashed }]
   const lines = [
     ...line(input.upperAction, 'action', colours.above, false),
     ...line(input.upperWarning, 'warning', colours.caution, true),
@@ -42,6 +44,7 @@ export function controlChart(input: ControlChartInput): EChartsOption {
     ...line(input.lowerAction, 'action', colours.above, false),
   ]
   const look = axisLook(colours)
+  const axis = roundAxis([...points.map((point) => point.value), ...lines.map((one) => one.value)])
   return {
     ...chartFrame(colours),
     grid: { left: 8, right: 104, top: 32, bottom: 8, containLabel: true },
@@ -62,8 +65,8 @@ export function controlChart(input: ControlChartInput): EChartsOption {
       type: 'value',
       name: input.unit,
       nameLocation: 'end',
-      ...roundAxis([...points.map((point) => point.value), ...lines.map((one) => one.value)]),
-      ...look,
+      ...axis,
+      ...axisLook(colours, axis.interval),
       splitLine: { show: false },
       nameTextStyle: { ...look.nameTextStyle, align: 'left' },
     },
@@ -86,7 +89,7 @@ export function controlChart(input: ControlChartInput): EChartsOption {
               borderWidth: 1.5,
             },
             tooltip: {
-              formatter: `${point.label}: ${short(point.value)}${isSignal ? `, signal ${point.signals.join(', ')}` : ''}`,
+              formatter: `${point.label}: ${shown(point.value)}${isSignal ? `, signal ${point.signals.join(', ')}` : ''}`,
             },
           }
         }),
@@ -96,5 +99,21 @@ export function controlChart(input: ControlChartInput): EChartsOption {
   }
 }
 
-/** Four digits for a label; the number itself stands in the table beside the chart. */
-const short = (value: number) => String(Number(value.toPrecision(4)))
+type Scale = Pick<ControlChartInput, 'center' | 'upperAction'> & { points: readonly { value: number }[] }
+
+/**
+ * How the numbers of one chart are written: all to the place of the second digit of their standard deviation, so that
+ * limits and values stand to the same decimals; to four digits of the largest while there are no limits.
+ */
+export function controlNumbers({ center, upperAction, points }: Scale): (value: number) => string {
+  const deviation = center === null || upperAction === null ? 0 : (upperAction - center) / 3
+  const largest = Math.max(0, ...points.map((point) => Math.abs(point.value)))
+  const decimals =
+    deviation > 0
+      ? 1 - Math.floor(Math.log10(deviation))
+      : largest > 0
+        ? 3 - Math.floor(Math.log10(largest))
+        : 0
+  const places = Math.min(12, Math.max(0, decimals))
+  return (value) => fixed(value, places)
+}

@@ -1,5 +1,14 @@
 import type { EChartsOption } from 'echarts'
-import { axisLook, chartFrame, emptyChart, limitLines, roundAxis, type ChartColours } from './chart-frame.js'
+import { convertUnit } from '../assay/index.js'
+import {
+  axisLook,
+  chartFrame,
+  emptyChart,
+  fixed,
+  limitLines,
+  roundAxis,
+  type ChartColours,
+} from './chart-frame.js'
 
 export interface TrendChartInput {
   points: readonly {
@@ -14,9 +23,21 @@ export interface TrendChartInput {
     verdict: 'below' | 'above' | 'conditional-below' | 'conditional-above' | null
     nonDetect: boolean
   }[]
-  limit: { name: string; value: number } | null
+  /** `text`: as the programme writes it, '0.010' */
+  limit: { name: string; value: number; text: string } | null
   unit: string
   colours: ChartColours
+}
+
+/** A limit in the unit of the drawing, written with the digits it has in its programme: 50 µg/L is 0.050 mg/L. */
+export function drawnLimit(
+  limit: { name: string; value: string; unit: 'mg/L' | 'ug/L' },
+  unit: 'mg/L' | 'ug/L',
+): { name: string; value: number; text: string } {
+  const value = convertUnit({ value: Number(limit.value), from: limit.unit, to: unit })
+  if (limit.unit === unit) return { name: limit.name, value, text: limit.value }
+  const decimals = limit.value.split('.')[1]?.length ?? 0
+  return { name: limit.name, value, text: fixed(value, Math.max(0, decimals + (unit === 'mg/L' ? 3 : -3))) }
 }
 
 type Point = TrendChartInput['points'][number]
@@ -55,6 +76,7 @@ export function trendChart(input: TrendChartInput): EChartsOption {
   const { points, limit, colours, unit } = input
   if (points.length === 0) return emptyChart('No results in this time.', colours)
   const look = axisLook(colours)
+  const axis = roundAxis([0, ...points.map((point) => point.value), ...(limit ? [limit.value] : [])])
   const inTime = points.toSorted((a, b) => Date.parse(a.at) - Date.parse(b.at))
   const times = inTime.map((point) => Date.parse(point.at))
   return {
@@ -76,8 +98,8 @@ export function trendChart(input: TrendChartInput): EChartsOption {
       type: 'value',
       name: unit,
       nameLocation: 'end',
-      ...roundAxis([0, ...points.map((point) => point.value), ...(limit ? [limit.value] : [])]),
-      ...look,
+      ...axis,
+      ...axisLook(colours, axis.interval),
       nameTextStyle: { ...look.nameTextStyle, align: 'right' },
     },
     series: [
@@ -97,7 +119,7 @@ export function trendChart(input: TrendChartInput): EChartsOption {
                 [
                   {
                     value: limit.value,
-                    text: `${limit.name} ${limit.value}`,
+                    text: `${limit.name} ${limit.text}`,
                     colour: colours.above,
                     dashed: true,
                   },

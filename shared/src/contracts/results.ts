@@ -66,7 +66,7 @@ export const resultTrend = defineEndpoint({
   query: z.object({ pointId: id, analyte: analyteCode, form: form.optional() }),
   response: z.object({
     unit: z.enum(['mg/L', 'ug/L']),
-    limit: z.object({ name: z.string(), value: z.number() }).nullable(),
+    limit: z.object({ name: z.string(), value: z.number(), text: z.string() }).nullable(),
     points: z.array(
       z.object({
         resultId: id,

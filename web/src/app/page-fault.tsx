@@ -1,16 +1,17 @@
 import { isRouteErrorResponse, useRouteError } from 'react-router-dom'
 import { ProblemError } from '../lib/problem-error'
-import { Failed, NotFound } from '../ui/page-states'
+import { Failed, NotFoundPage } from '../ui/page-states'
 
 const OLD_PAGE = /dynamically imported module|module script failed|Unable to preload/i
 
 /** A page that broke keeps to itself: the navigation around it still works. */
 export function PageFault() {
   const error = useRouteError()
-  if (isRouteErrorResponse(error) && error.status === 404) return <NotFound />
+  if (isRouteErrorResponse(error) && error.status === 404) return <NotFoundPage />
   if (error instanceof ProblemError) {
     return (
       <div className="page-sheet">
+        <h1 className="visually-hidden">Not loaded</h1>
         <Failed problem={error} retry={() => window.location.reload()} />
       </div>
     )
@@ -18,6 +19,7 @@ export function PageFault() {
   const isOld = error instanceof Error && OLD_PAGE.test(error.message)
   return (
     <div className="page-sheet">
+      <h1 className="visually-hidden">A fault of this page</h1>
       <div className="box empty" role="alert">
         <strong>{isOld ? 'This page could not be loaded' : 'This page ran into a fault of its own'}</strong>
         <p>

@@ -5,7 +5,8 @@ import { todayRoutes } from '../pages/today/routes'
 import { AREAS } from './areas'
 import { PageFault } from './page-fault'
 import { Opening, Root } from './root'
-import { HomePage, NotFoundPage } from './small-pages'
+import { NotFoundPage } from '../ui/page-states'
+import { HomePage } from './small-pages'
 import { SignedIn } from './signed-in'
 
 const door: RouteObject[] = [

@@ -8,6 +8,7 @@ import { asProblem } from '../lib/problem-error'
 import { isSignInNeeded, subscribeToSignInNeed, waitForSignIn } from '../lib/re-sign-in'
 import { SessionContext, sessionQuery } from '../lib/session'
 import { paths } from '../lib/paths'
+import { MarginPage } from '../ui/margin-page'
 import { Failed, Forbidden, SkeletonPage } from '../ui/page-states'
 import { BenchLayout } from './layouts/bench-layout'
 import { ClientLayout } from './layouts/client-layout'
@@ -86,9 +87,10 @@ function Guarded({ session }: { session: SessionView }) {
   return isAllowed ? (
     <Outlet />
   ) : (
-    <div className="page-sheet">
-      <h1 className="visually-hidden">Not open to your role</h1>
-      <Forbidden />
-    </div>
+    <MarginPage title="Not open to your role">
+      <div className="box">
+        <Forbidden />
+      </div>
+    </MarginPage>
   )
 }

@@ -59,3 +59,12 @@ export function clearProblems(form: FormInstance, changed?: unknown): void {
   })
   form.setFields(stale.map((field) => ({ name: field.name, errors: [] })))
 }
+
+/** Fields that nobody touched take what the form is filled from now; what was typed stays. */
+export function followThing(form: FormInstance): void {
+  const untouched = form
+    .getFieldsError()
+    .map((field) => field.name as NamePath)
+    .filter((name) => !form.isFieldTouched(name))
+  form.resetFields(untouched)
+}

@@ -1,10 +1,10 @@
 import type { Endpoint, ResponseOf } from '@weirlight/shared/contracts'
 import { Form, type FormInstance, type FormProps } from 'antd'
-import { useEffect, useState } from 'react'
+import { useEffect, useRef, useState } from 'react'
 import type { CallInput } from './call'
 import { contractProblems } from './contract-problems'
 import { useDraft } from './drafts'
-import { clearProblems, placeProblems } from './form-issues'
+import { clearProblems, followThing, placeProblems } from './form-issues'
 import { useLeaveWarning } from './leave-warning'
 import { asProblem, type ProblemError } from './problem-error'
 import { useCall } from './queries'
@@ -13,6 +13,8 @@ export interface EndpointFormOptions<E extends Endpoint, Values extends object> 
   endpoint: E
   toInput: (values: Values) => CallInput<E>
   invalidates?: readonly Endpoint[]
+  /** version of the thing that fills the form: when it moves on, fields left alone show the new thing */
+  basedOn?: number
   /** names the draft kept on this computer; left out, nothing is kept, but leaving is still warned of */
   draft?: string
   onDone?: (answer: ResponseOf<E>) => void | Promise<void>
@@ -22,8 +24,9 @@ export interface FormTrouble {
   problem: ProblemError | null
   /** complaints that belong to no field of this form */
   homeless: readonly string[]
-  /** what is entered stays on this computer when the page is loaded again */
-  isKept: boolean
+  /** the refusal after which the page was read again, until the form is sent once more */
+  loadedAfter: ProblemError | null
+  onLoadedAgain: () => void
   blocker: ReturnType<typeof useLeaveWarning>['blocker']
 }
 
@@ -44,11 +47,12 @@ interface EndpointForm<Values> extends FormTrouble {
 export function useEndpointForm<E extends Endpoint, Values extends object>(
   options: EndpointFormOptions<E, Values>,
 ): EndpointForm<Values> {
-  const { endpoint, toInput, draft, onDone } = options
+  const { endpoint, toInput, basedOn, draft, onDone } = options
   const [form] = Form.useForm<Values>()
   const [isDirty, setDirty] = useState(false)
   const [homeless, setHomeless] = useState<readonly string[]>([])
   const [problem, setProblem] = useState<ProblemError | null>(null)
+  const [loadedAfter, setLoadedAfter] = useState<ProblemError | null>(null)
   const kept = useDraft<Partial<Values>>(draft ?? 'unnamed')
   const [hasDraft, setHasDraft] = useState(draft !== undefined && kept.found !== null)
   const leave = useLeaveWarning(isDirty)
@@ -63,9 +67,18 @@ export function useEndpointForm<E extends Endpoint, Values extends object>(
     // eslint-disable-next-line react-hooks/exhaustive-deps
   }, [])
 
+  const filledFrom = useRef(basedOn)
+  useEffect(() => {
+    if (filledFrom.current === basedOn) return
+    filledFrom.current = basedOn
+    if (isDirty) followThing(form)
+    else form.resetFields()
+  }, [basedOn, form, isDirty])
+
   const onFinish = async (values: Values) => {
     if (mutation.isPending) return
     setProblem(null)
+    setLoadedAfter(null)
     setHomeless([])
     clearProblems(form)
     const input = toInput(values)
@@ -106,7 +119,13 @@ export function useEndpointForm<E extends Endpoint, Values extends object>(
     isBusy: mutation.isPending,
     isDirty,
     hasDraft,
-    isKept: draft !== undefined,
+    loadedAfter,
+    onLoadedAgain: () => {
+      setLoadedAfter(problem)
+      setProblem(null)
+      setHomeless([])
+      clearProblems(form)
+    },
     discardDraft: () => {
       kept.clear()
       form.resetFields()

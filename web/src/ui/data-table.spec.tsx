@@ -63,4 +63,47 @@ describe('DataTable', () => {
     expect(screen.getByText('No samples yet')).toBeTruthy()
     expect(within(screen.getByRole('table')).getAllByRole('columnheader')).toHaveLength(2)
   })
+  it('hands each value its label, for the blocks that a phone makes of the rows of a wide table', () => {
+    const wide: Column<Row>[] = [
+      ...columns,
+      { key: 'id', title: <span>Id</span>, label: 'Identity', text: (row) => row.id },
+      { key: 'none', title: 'Nothing', text: () => null },
+    ]
+    render(
+      <MemoryRouter>
+        <DataTable
+          label="Wide"
+          rows={rows}
+          columns={wide}
+          rowKey={(row) => row.id}
+          empty={{ title: 'None' }}
+        />
+        <DataTable
+          label="Three"
+          rows={rows}
+          columns={wide.slice(0, 3)}
+          rowKey={(row) => row.id}
+          empty={{ title: 'None' }}
+        />
+      </MemoryRouter>,
+    )
+    const table = screen.getByRole('table', { name: 'Wide' })
+    expect(table.classList.contains('is-list')).toBe(true)
+    expect(screen.getByRole('table', { name: 'Three' }).classList.contains('is-list')).toBe(false)
+    const [, first] = within(table).getAllByRole('row')
+    const cells = first ? within(first).getAllByRole('cell') : []
+    expect(cells.map((cell) => cell.dataset['label'])).toEqual([
+      'Number',
+      'Iron, mg/L',
+      'Identity',
+      'Nothing',
+    ])
+    // what is empty is left out there
+    expect(cells.map((cell) => cell.querySelector('.table-value:empty') !== null)).toEqual([
+      false,
+      false,
+      false,
+      true,
+    ])
+  })
 })

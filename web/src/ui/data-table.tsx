@@ -4,6 +4,7 @@ import { Link, useNavigate } from 'react-router-dom'
 import { asProblem } from '../lib/problem-error'
 import { Aligned, longestFraction } from './aligned'
 import { Empty, Failed, Forbidden } from './page-states'
+import './styles/list.css'
 
 export interface Column<Row> {
   key: string
@@ -19,6 +20,10 @@ export interface Column<Row> {
   isNarrow?: boolean
   /** left out on a phone */
   isSecondary?: boolean
+  /** on a phone: at the right of the row’s heading (a state), or in one line with the column before (a unit) */
+  onPhone?: 'corner' | 'beside'
+  /** said before the value on a phone where the title is more than words */
+  label?: string
 }
 
 interface Page<Row> {
@@ -37,12 +42,16 @@ interface DataTableProps<Row> {
   /** the whole row leads there; the first column is the link */
   rowTo?: (row: Row) => string | null
   rowTone?: (row: Row) => 'qc' | 'now' | undefined
+  /** figures to be compared down a column: scrolls sideways on a phone */
+  isTableOnPhone?: boolean
   empty: { title: string; text?: string; action?: ReactNode }
 }
 
 const SKELETON_ROWS = 6
+/** so many fit beside each other on a phone; with more, each row becomes a block of labelled values there */
+const COLUMNS_ON_A_PHONE = 3
 
-/** A list: paged by key, scrolling inside itself where the page is narrow, with all its states. */
+/** A list: paged by key, scrolling inside itself or in blocks where the page is narrow, with all its states. */
 export function DataTable<Row>(props: DataTableProps<Row>) {
   const { label, columns, query, empty } = props
   const rows = props.rows ?? query?.data?.pages.flatMap((page) => page.items)
@@ -54,23 +63,28 @@ export function DataTable<Row>(props: DataTableProps<Row>) {
       <Failed problem={problem} retry={() => void query.refetch()} />
     )
   }
+  const isInBlocks =
+    !props.isTableOnPhone && columns.filter((column) => !column.isSecondary).length > COLUMNS_ON_A_PHONE
   return (
     <>
       {/* scrolls sideways by keyboard as well */}
       <div className="table-wrap" tabIndex={0} role="region" aria-label={label}>
-        <table className="table" aria-busy={!rows}>
+        {/* the roles are written out: in blocks it is drawn as no table, and some browsers would forget them */}
+        <table className={isInBlocks ? 'table is-list' : 'table'} role="table" aria-busy={!rows}>
           <caption className="visually-hidden">{label}</caption>
-          <thead>
-            <tr>
+          <thead role="rowgroup">
+            <tr role="row">
               {columns.map((column) => (
-                <th key={column.key} scope="col" className={classOf(column)}>
+                <th key={column.key} scope="col" role="columnheader" className={classOf(column)}>
                   {column.title}
                   {column.unit && <small>{column.unit}</small>}
                 </th>
               ))}
             </tr>
           </thead>
-          <tbody>{rows ? <Rows {...props} rows={rows} /> : <SkeletonRows columns={columns.length} />}</tbody>
+          <tbody role="rowgroup">
+            {rows ? <Rows {...props} rows={rows} /> : <SkeletonRows columns={columns.length} />}
+          </tbody>
         </table>
         {rows?.length === 0 && (
           <Empty title={empty.title} action={empty.action}>
@@ -88,8 +102,15 @@ function classOf<Row>(column: Column<Row>): string | undefined {
     column.kind === 'number' && 'n',
     column.isNarrow && 'narrow',
     column.isSecondary && 'is-secondary',
+    column.onPhone && `is-${column.onPhone}`,
   ].filter(Boolean)
   return names.length > 0 ? names.join(' ') : undefined
+}
+
+/** What stands before a value where the column heads are out of sight. */
+function labelOf<Row>({ label, title, unit }: Column<Row>): string | undefined {
+  const words = label ?? (typeof title === 'string' ? title : '')
+  return [words, unit].filter(Boolean).join(', ') || undefined
 }
 
 function Rows<Row>({
@@ -112,6 +133,7 @@ function Rows<Row>({
     return (
       <tr
         key={rowKey(row)}
+        role="row"
         className={names || undefined}
         onClick={(event) => {
           // links, buttons and marked text inside a row keep their own meaning
@@ -122,14 +144,16 @@ function Rows<Row>({
         {columns.map((column, position) => {
           const content = contentOf({ column, row, index, places: places.get(column.key) ?? 0 })
           return (
-            <td key={column.key} className={classOf(column)}>
-              {position === 0 && to ? (
-                <Link className="table-link" to={to}>
-                  {content}
-                </Link>
-              ) : (
-                content
-              )}
+            <td key={column.key} role="cell" className={classOf(column)} data-label={labelOf(column)}>
+              <div className="table-value">
+                {position === 0 && to ? (
+                  <Link className="table-link" to={to}>
+                    {content}
+                  </Link>
+                ) : (
+                  content
+                )}
+              </div>
             </td>
           )
         })}
@@ -152,9 +176,9 @@ function contentOf<Row>(given: { column: Column<Row>; row: Row; index: number; p
 
 function SkeletonRows({ columns }: { columns: number }) {
   return Array.from({ length: SKELETON_ROWS }, (_, row) => (
-    <tr key={row}>
+    <tr key={row} role="row">
       {Array.from({ length: columns }, (_, column) => (
-        <td key={column}>
+        <td key={column} role="cell">
           <span className="skeleton" />
           {row + column === 0 && <span className="visually-hidden">Loading</span>}
         </td>

@@ -3,6 +3,7 @@ import { Button, Form, Input, Modal } from 'antd'
 import { useState, type ReactNode } from 'react'
 import { clearProblems, placeProblems } from '../lib/form-issues'
 import { asProblem, type ProblemError } from '../lib/problem-error'
+import { LoadAgain } from './load-again'
 import { Strip } from './sheet'
 
 interface DialogProps {
@@ -20,6 +21,8 @@ interface ActDialogProps<Values extends object> extends DialogProps {
   act: (values: Values) => unknown
   /** the field that a complaint without a path belongs to, by its code */
   fieldOf?: (problem: ProblemError) => string | null
+  /** a signature covers what was on the page: once that is read again, it is looked at before signing */
+  closesOnLoad?: boolean
   children?: ReactNode
 }
 
@@ -29,15 +32,23 @@ function ActDialog<Values extends object>(props: ActDialogProps<Values>) {
   const [form] = Form.useForm<Values>()
   const [isBusy, setBusy] = useState(false)
   const [sentences, setSentences] = useState<readonly string[]>([])
+  const [staleness, setStaleness] = useState<'stale' | 'loaded' | null>(null)
   const close = () => {
     if (isBusy) return
     setSentences([])
+    setStaleness(null)
     onClose()
+  }
+  const loadedAgain = () => {
+    if (props.closesOnLoad) return close()
+    setSentences([])
+    setStaleness('loaded')
   }
   const submit = async (values: Values) => {
     if (isBusy) return
     setBusy(true)
     setSentences([])
+    setStaleness(null)
     try {
       await act(values)
       setBusy(false)
@@ -50,6 +61,7 @@ function ActDialog<Values extends object>(props: ActDialogProps<Values>) {
         placeProblems(form, [{ path: field, message: problem.message }])
         return
       }
+      if (problem.code === 'stale') setStaleness('stale')
       const homeless = placeProblems(form, problem.errors)
       setSentences(problem.errors.length > 0 ? homeless : [problem.message])
     }
@@ -80,8 +92,13 @@ function ActDialog<Values extends object>(props: ActDialogProps<Values>) {
           </div>
         )}
         {sentences.length > 0 && (
-          <Strip tone="above" isAlert>
+          <Strip tone="above" isAlert action={staleness === 'stale' && <LoadAgain onLoaded={loadedAgain} />}>
             {sentences.join(' ')}
+          </Strip>
+        )}
+        {staleness === 'loaded' && (
+          <Strip tone="quiet" isAlert>
+            Loaded again. If it is still right, go on; if not, cancel and look at the page.
           </Strip>
         )}
         {props.children}
@@ -120,6 +137,7 @@ export function SignDialog({ meaning, note, onSign, ...rest }: SignDialogProps) 
       {...rest}
       act={(values) => onSign(values.passphrase, values.note ?? '')}
       fieldOf={passphraseField}
+      closesOnLoad
     >
       <p className="dialog-words">
         Your signature means <strong>{meaning}</strong>. It carries your name and the time, and covers exactly

@@ -1,27 +1,29 @@
 import type { FormTrouble } from '../lib/use-endpoint-form'
 import { useLaboratoryTime } from '../lib/use-laboratory-time'
 import { ConfirmDialog } from './dialogs'
+import { LoadAgain } from './load-again'
 import { Strip } from './sheet'
 
 /** Above a form: what belongs to no field of it, and the question before it is left half filled. */
 export function FormProblem({ form }: { form: FormTrouble }) {
-  const { problem, homeless, isKept, blocker } = form
+  const { problem, homeless, loadedAfter, onLoadedAgain, blocker } = form
   const { at } = useLaboratoryTime()
   const isPlaced = problem !== null && problem.errors.length > 0 && homeless.length === 0
   return (
     <>
       {(problem || homeless.length > 0) && (
-        <Strip tone="above" isAlert>
+        <Strip
+          tone="above"
+          isAlert
+          action={problem?.code === 'stale' && <LoadAgain onLoaded={onLoadedAgain} />}
+        >
           {isPlaced
             ? 'Please look at the marked fields.'
             : (problem?.message ?? 'Please look at this first:')}
           {problem?.conflict && (
             <p>
-              Changed by {problem.conflict.changedBy}, {at(problem.conflict.changedAt)}. Load the page again
-              to see it;{' '}
-              {isKept
-                ? 'what you entered here stays as a draft.'
-                : 'note what you entered here first, it is not kept.'}
+              Changed by {problem.conflict.changedBy}, {at(problem.conflict.changedAt)}. Load it again to see
+              it: what you entered stays, and the fields you left alone show what stands now.
             </p>
           )}
           {homeless.length > 0 && (
@@ -34,6 +36,13 @@ export function FormProblem({ form }: { form: FormTrouble }) {
           {problem?.code === 'internal' && problem.requestId && (
             <p className="note">Request {problem.requestId}</p>
           )}
+        </Strip>
+      )}
+      {loadedAfter && (
+        <Strip tone="quiet" isAlert>
+          Loaded again. What you entered is still here; the fields you left alone show what stands now
+          {loadedAfter.conflict ? `, after the change by ${loadedAfter.conflict.changedBy}` : ''}. Look
+          through them, then send the form once more.
         </Strip>
       )}
       <LeaveDialog blocker={blocker} />

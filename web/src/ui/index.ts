@@ -5,6 +5,7 @@ export { Cautions } from './cautions'
 export { Clock, ReadingWindow, Since } from './clock'
 export { DataTable, type Column } from './data-table'
 export { FilterBar, FilterDay, FilterSelect, FilterText } from './filter-bar'
+export { LoadAgain, Refused } from './load-again'
 export { MarginPage } from './margin-page'
 export { NumberWithStory } from './number-with-story'
 export {
@@ -13,6 +14,7 @@ export {
   Forbidden,
   Loaded,
   NotFound,
+  NotFoundPage,
   Progress,
   SkeletonLines,
   SkeletonPage,

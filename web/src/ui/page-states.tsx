@@ -3,6 +3,7 @@ import { useId, type ReactNode } from 'react'
 import { Link } from 'react-router-dom'
 import { asProblem, type ProblemError } from '../lib/problem-error'
 import { paths } from '../lib/paths'
+import { MarginPage } from './margin-page'
 
 interface EmptyProps {
   title: string
@@ -60,18 +61,47 @@ export function Forbidden() {
   )
 }
 
-export function NotFound({ what = 'page' }: { what?: string }) {
+interface PlaceLink {
+  to: string
+  label: string
+}
+
+interface NotFoundProps {
+  /** 'sample': as it stands in “no such …” */
+  what?: string
+  /** where all of them are listed */
+  back?: PlaceLink
+  /** the heading of the page says what is missing already */
+  isHeaded?: boolean
+}
+
+export function NotFound({
+  what = 'page',
+  back = { to: paths.today, label: 'Today' },
+  isHeaded = false,
+}: NotFoundProps) {
   return (
     <Empty
-      title={`There is no such ${what}`}
+      title={isHeaded ? 'Nothing is kept at this address' : `There is no such ${what}`}
       action={
-        <Link className="button" to={paths.today}>
-          Go to Today
+        <Link className="button" to={back.to}>
+          Go to {back.label}
         </Link>
       }
     >
-      The address may be mistyped, or it belongs to somebody else.
+      The address may be mistyped, or what it names belongs to somebody else. {back.label} shows what there is.
     </Empty>
+  )
+}
+
+/** A page of one thing that does not exist: what is missing is its heading. */
+export function NotFoundPage({ what = 'page', back }: NotFoundProps) {
+  return (
+    <MarginPage title={`No such ${what}`} {...(back ? { back } : {})}>
+      <div className="box">
+        <NotFound what={what} isHeaded {...(back ? { back } : {})} />
+      </div>
+    </MarginPage>
   )
 }
 
@@ -91,10 +121,15 @@ export function SkeletonLines({ lines = 6 }: { lines?: number }) {
   )
 }
 
-export function SkeletonPage() {
+export function SkeletonPage({ back }: { back?: PlaceLink | undefined }) {
   return (
     <div className="page" aria-busy="true">
       <div className="page-margin">
+        {back && (
+          <Link className="page-back" to={back.to}>
+            ← {back.label}
+          </Link>
+        )}
         <SkeletonLines lines={4} />
       </div>
       <div className="page-sheet">
@@ -113,24 +148,33 @@ interface LoadedProps<T> {
   skeleton?: 'page' | 'lines'
   /** the thing, for “there is no such …” */
   what?: string
+  /** where all of them are listed: the way out of a page that has nothing to show */
+  back?: PlaceLink
 }
 
+/** Nothing is there, or the address cannot be that of anything: for a person it is the same. */
+const isMissing = (problem: ProblemError) =>
+  problem.code === 'not-found' || problem.errors.some((each) => each.path === 'id')
+
 /** Draws its children once the data is there; until then, or instead, the state that fits. */
-export function Loaded<T>({ query, children, skeleton = 'lines', what }: LoadedProps<T>) {
+export function Loaded<T>({ query, children, skeleton = 'lines', what, back }: LoadedProps<T>) {
   if (query.data !== undefined) return children(query.data)
-  if (query.isError) {
-    const problem = asProblem(query.error)
-    const state =
-      problem.code === 'not-found' ? (
-        <NotFound {...(what ? { what } : {})} />
-      ) : problem.code === 'forbidden' ? (
-        <Forbidden />
-      ) : (
-        <Failed problem={problem} retry={() => void query.refetch()} />
-      )
-    return skeleton === 'page' ? <div className="page-sheet">{state}</div> : state
-  }
-  return skeleton === 'page' ? <SkeletonPage /> : <SkeletonLines />
+  if (!query.isError) return skeleton === 'page' ? <SkeletonPage back={back} /> : <SkeletonLines />
+  const problem = asProblem(query.error)
+  const given = { ...(what ? { what } : {}), ...(back ? { back } : {}) }
+  const isWhole = skeleton === 'page'
+  if (isMissing(problem)) return isWhole ? <NotFoundPage {...given} /> : <NotFound {...given} />
+  const isForbidden = problem.code === 'forbidden'
+  const state = isForbidden ? <Forbidden /> : <Failed problem={problem} retry={() => void query.refetch()} />
+  if (!isWhole) return state
+  return (
+    <MarginPage
+      title={isForbidden ? 'Not open to your role' : `The ${what ?? 'page'} could not be loaded`}
+      {...(back ? { back } : {})}
+    >
+      {isForbidden ? <div className="box">{state}</div> : state}
+    </MarginPage>
+  )
 }
 
 /** For what takes longer than two seconds: how far it is, in numbers. */

@@ -8,6 +8,7 @@ import type {
 } from '@weirlight/shared/contracts'
 import { determinationName, showUnit, type PositionLimit } from '@weirlight/shared/contracts'
 import { convertUnit } from '@weirlight/shared/assay'
+import { drawnLimit } from '@weirlight/shared/charts'
 import {
   Clock,
   Database,
@@ -77,9 +78,7 @@ export class ResultsService {
     const limit = newest?.limitSnapshot as unknown as PositionLimit | null | undefined
     return {
       unit,
-      limit: limit
-        ? { name: limit.name, value: convertUnit({ value: Number(limit.value), from: limit.unit, to: unit }) }
-        : null,
+      limit: limit ? drawnLimit(limit, unit) : null,
       points: rows.map((row) => ({
         resultId: row.id,
         at: row.collectedAt.toISOString(),

@@ -17,11 +17,12 @@ export function BenchLayout({ children }: { children: ReactNode }) {
   const way = useRef<HTMLElement>(null)
   const { pathname } = useLocation()
   useEffect(() => {
-    // on a phone the way is longer than the screen: show where we are
-    way.current
-      ?.querySelector('[aria-current="page"]')
-      ?.scrollIntoView({ block: 'nearest', inline: 'center' })
-  }, [pathname])
+    // on a phone the way is longer than the screen: show where we are, also once the counts have made room
+    const nav = way.current
+    const here = nav?.querySelector<HTMLElement>('[aria-current="page"]')
+    if (!nav || !here) return
+    nav.scrollLeft = here.offsetLeft - nav.offsetLeft - (nav.clientWidth - here.offsetWidth) / 2
+  }, [pathname, counts])
   const shown = AREAS.filter((area) => area.routes.length > 0 && may(area.needs))
   return (
     <>

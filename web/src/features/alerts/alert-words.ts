@@ -1,4 +1,4 @@
-import { convertUnit } from '@weirlight/shared/assay'
+import { drawnLimit } from '@weirlight/shared/charts'
 import { determinationName, showUnit } from '@weirlight/shared/contracts'
 import { shownNumber, type Trend } from '../results'
 import type { AlertRow, AlertView } from './api/alert-queries'
@@ -51,7 +51,7 @@ export function trendOfAlert(alert: AlertView): Trend {
     unit,
     limit:
       Number.isFinite(limit) && alert.limitValue !== ''
-        ? { name: alert.limitName, value: convertUnit({ value: limit, from: limitUnit, to: unit }) }
+        ? drawnLimit({ name: alert.limitName, value: alert.limitValue, unit: limitUnit }, unit)
         : null,
     points,
   }

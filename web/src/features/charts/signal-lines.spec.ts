@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest'
 import type { ControlChartView } from './api/chart-queries'
-import { chartWords, shortNumber, signalLines } from './signal-lines'
+import { chartWords, signalLines } from './signal-lines'
 
 // constructed
 const point = (day: number, value: number, signals: string[] = []) => ({
@@ -36,15 +36,11 @@ describe('signalLines', () => {
 
 describe('chartWords', () => {
   it('says limits and how many signals', () => {
-    expect(chartWords(chart)).toBe('3 values, centre 99.81 %, action limits 93.1 to 106.5 %. 2 signals.')
+    expect(chartWords(chart)).toBe('3 values, centre 99.8 %, action limits 93.1 to 106.5 %. 2 signals.')
   })
   it('says when there are too few values for limits', () => {
     expect(chartWords({ ...chart, center: null, points: [point(2, 99)] })).toBe(
       'One value; too few for limits.',
     )
   })
-})
-
-describe('shortNumber', () => {
-  it('keeps four digits and a true minus', () => expect(shortNumber(-0.00123456)).toBe('−0.001235'))
 })

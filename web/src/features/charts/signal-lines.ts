@@ -1,3 +1,4 @@
+import { controlNumbers } from '@weirlight/shared/charts'
 import type { ControlChartView } from './api/chart-queries'
 
 export interface SignalLine {
@@ -27,12 +28,10 @@ export function signalLines(chart: ControlChartView): SignalLine[] {
     .toSorted((a, b) => Date.parse(b.at) - Date.parse(a.at))
 }
 
-/** Four digits; the number of the run stands on its own page. */
-export const shortNumber = (value: number): string => String(Number(value.toPrecision(4))).replace(/^-/, '−')
-
 /** `42 values, centre 99.8 %, action limits 93.1 to 106.5 %.` */
 export function chartWords(chart: ControlChartView): string {
   const { points, center, lowerAction, upperAction, unit } = chart
+  const shown = controlNumbers(chart)
   if (points.length === 0) return 'No value yet.'
   const many = points.length === 1 ? 'One value' : `${points.length} values`
   if (center === null || lowerAction === null || upperAction === null) {
@@ -40,5 +39,5 @@ export function chartWords(chart: ControlChartView): string {
   }
   const signals = points.filter((point) => point.signals.length > 0).length
   const found = signals === 0 ? 'No signal.' : signals === 1 ? 'One signal.' : `${signals} signals.`
-  return `${many}, centre ${shortNumber(center)} ${unit}, action limits ${shortNumber(lowerAction)} to ${shortNumber(upperAction)} ${unit}. ${found}`
+  return `${many}, centre ${shown(center)} ${unit}, action limits ${shown(lowerAction)} to ${shown(upperAction)} ${unit}. ${found}`
 }

@@ -38,7 +38,7 @@ describe('trendWords', () => {
   })
   const trend: Trend = {
     unit: 'ug/L',
-    limit: { name: 'secondary level', value: 50 },
+    limit: { name: 'secondary level', value: 50, text: '50' },
     points: [
       point('2026-01-05T10:00:00Z', 210, '210'),
       point('2026-02-05T10:00:00Z', 10, '<10'),

@@ -63,6 +63,6 @@ export function trendWords(trend: Trend, day: (instant: string) => string): stri
     trend.points.length === 1
       ? `One result, ${day(first.at)}: ${first.text} ${unit}.`
       : `${trend.points.length} results from ${day(first.at)} to ${day(last.at)}, between ${low} and ${high} ${unit}.`
-  const limit = trend.limit ? ` Limit ${trend.limit.value} ${unit}, ${trend.limit.name}.` : ''
+  const limit = trend.limit ? ` Limit ${trend.limit.text} ${unit}, ${trend.limit.name}.` : ''
   return `${many}${limit}`
 }

@@ -24,10 +24,12 @@ import { EarlierResults } from './earlier-results'
 import { LawClocks } from './law-clocks'
 import './alerts.css'
 
+const LIST = { to: paths.alerts, label: 'Alerts' }
+
 /** One alert, for the laboratory. */
 export function AlertById({ id }: { id: string }) {
   return (
-    <Loaded query={useQuery(alertQuery(id))} skeleton="page" what="alert">
+    <Loaded query={useQuery(alertQuery(id))} skeleton="page" what="alert" back={LIST}>
       {(alert) => <AlertOnPage alert={alert} />}
     </Loaded>
   )
@@ -41,7 +43,7 @@ function AlertOnPage({ alert }: { alert: AlertView }) {
     <MarginPage
       title={`Alert ${alert.number}`}
       subtitle={`${alert.clientName}, ${alert.pointName}`}
-      back={{ to: paths.alerts, label: 'Alerts' }}
+      back={LIST}
       state={<StatusTag mark={STATE_MARKS.alert[alert.state]} />}
       facts={[
         !isAnswered(alert) &&

@@ -30,7 +30,12 @@ export function AlertsList() {
   const { at } = useLaboratoryTime()
   const columns: Column<AlertRow>[] = [
     { key: 'number', title: 'Alert', isNarrow: true, text: (row) => row.number },
-    { key: 'state', title: 'State', cell: (row) => <StatusTag mark={STATE_MARKS.alert[row.state]} /> },
+    {
+      key: 'state',
+      title: 'State',
+      onPhone: 'corner',
+      cell: (row) => <StatusTag mark={STATE_MARKS.alert[row.state]} />,
+    },
     {
       key: 'point',
       title: 'Point',
@@ -52,7 +57,7 @@ export function AlertsList() {
         </NumberWithStory>
       ),
     },
-    { key: 'unit', title: 'Unit', isNarrow: true, text: (row) => showUnit(row.unit) },
+    { key: 'unit', title: 'Unit', isNarrow: true, onPhone: 'beside', text: (row) => showUnit(row.unit) },
     {
       key: 'limit',
       title: 'Limit',
@@ -63,7 +68,7 @@ export function AlertsList() {
         </>
       ),
     },
-    { key: 'raised', title: 'Raised', isNarrow: true, isSecondary: true, text: (row) => at(row.raisedAt) },
+    { key: 'raised', title: 'Raised', isNarrow: true, text: (row) => at(row.raisedAt) },
     { key: 'answer', title: 'Answer', cell: (row) => <Answer alert={row} /> },
   ]
   return (

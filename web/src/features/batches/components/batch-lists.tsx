@@ -47,6 +47,7 @@ const FINDINGS: Column<BatchRow> = {
 const STATE: Column<BatchRow> = {
   key: 'state',
   title: 'State',
+  onPhone: 'corner',
   cell: (row) => <StatusTag mark={STATE_MARKS.batch[row.state]} />,
 }
 const ANALYST: Column<BatchRow> = { key: 'by', title: 'Analyst', text: (row) => row.openedBy.name }

@@ -3,7 +3,7 @@ import { Button, Form, Input, Modal } from 'antd'
 import { useState } from 'react'
 import { useCall, useLaboratoryTime } from '../../../lib'
 import { useEndpointForm } from '../../../lib/use-endpoint-form'
-import { ReadingWindow, Strip } from '../../../ui'
+import { ReadingWindow, Refused } from '../../../ui'
 import { FormProblem } from '../../../ui/form-problem'
 import { MomentInput } from '../../../ui/time-inputs'
 
@@ -48,11 +48,7 @@ export function ColourClock({ batch, isEditable, take }: ColourClockProps) {
           </button>
         </div>
       )}
-      {start.error && (
-        <Strip tone="above" isAlert>
-          {start.error.message}
-        </Strip>
-      )}
+      <Refused problem={start.error} reset={start.reset} />
       {isOpen && <ColourDialog batch={batch} onClose={() => setOpen(false)} take={take} />}
     </>
   )
@@ -72,6 +68,7 @@ function ColourDialog(props: { batch: BatchView; onClose: () => void; take: (bat
       body: { version: batch.version, colourStartedAt: colourStartedAt || null, note: note ?? '' },
     }),
     invalidates: [getBatch],
+    basedOn: batch.version,
     onDone: (answer) => {
       take(answer)
       onClose()

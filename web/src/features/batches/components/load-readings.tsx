@@ -36,10 +36,12 @@ export const changesIn = (found: Preview): number =>
     0,
   )
 
+const LIST = { to: paths.batches, label: 'Batches' }
+
 /** A file of absorbances into the cells of a run sheet, looked at first. */
 export function LoadReadings({ id }: { id: string }) {
   return (
-    <Loaded query={useQuery(batchQuery(id))} skeleton="page" what="batch">
+    <Loaded query={useQuery(batchQuery(id))} skeleton="page" what="batch" back={LIST}>
       {(batch) => <LoadPage batch={batch} />}
     </Loaded>
   )

@@ -28,6 +28,7 @@ export function PositionDialog({ row, field, onClose, onSaved }: PositionDialogP
       body: { version: row.version, dilution, note: note ?? '', ...(reason?.trim() ? { reason } : {}) },
     }),
     invalidates: [getBatch],
+    basedOn: row.version,
     onDone: (batch) => {
       onSaved(batch)
       onClose()

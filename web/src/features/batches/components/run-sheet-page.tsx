@@ -12,7 +12,7 @@ import { useRef, useState, type KeyboardEvent } from 'react'
 import { Link } from 'react-router-dom'
 import { hrefFor, paths, ProblemError, useCall, useNotice } from '../../../lib'
 import { useIsNarrow } from '../../../lib/use-is-narrow'
-import { Bar, KeyHints, MarginPage, ReadingWindow, StatusTag, Strip } from '../../../ui'
+import { Bar, KeyHints, MarginPage, ReadingWindow, Refused, StatusTag, Strip } from '../../../ui'
 import { ConfirmDialog } from '../../../ui/dialogs'
 import { RunGrid } from '../../../ui/run-grid'
 import { ChangeReason, CorrectionsBox } from '../../calibrations'
@@ -171,11 +171,7 @@ export function RunSheetPage({ batch }: { batch: BatchView }) {
       }
     >
       <SheetStrips batch={batch} sheet={sheet} />
-      {verify.error && (
-        <Strip tone="above" isAlert>
-          {verify.error.message}
-        </Strip>
-      )}
+      <Refused problem={verify.error} reset={verify.reset} />
       {isMissingNamed && sheet.missing.length > 0 && (
         <Strip
           isAlert

@@ -62,6 +62,7 @@ export function WaitingPicker({ waiting, batchSize, value = [], onChange }: Wait
           {
             key: 'sample',
             title: 'Sample',
+            onPhone: 'beside',
             cell: (row) => <Link to={paths.sample(row.sampleId)}>{row.sampleNumber}</Link>,
           },
           { key: 'clock', title: 'Holding time', cell: (row) => <Clock dueAt={row.holding.dueAt} /> },

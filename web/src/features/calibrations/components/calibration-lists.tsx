@@ -70,6 +70,7 @@ const CRITERIA: Column<CalibrationRow> = {
 const STATE: Column<CalibrationRow> = {
   key: 'state',
   title: 'State',
+  onPhone: 'corner',
   cell: (row) => <StatusTag mark={STATE_MARKS.calibration[row.state]} />,
 }
 const LEFT: Column<CalibrationRow> = {

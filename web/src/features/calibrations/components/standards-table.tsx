@@ -78,6 +78,7 @@ export function StandardsTable({ view, live, definition }: StandardsTableProps) 
       label="Standards and their readings"
       rows={view.standards.toSorted((a, b) => a.position - b.position)}
       columns={columns}
+      isTableOnPhone
       rowKey={(row) => row.id}
       rowTone={(row) => (row.role === 'second-source' ? 'qc' : undefined)}
       empty={{ title: 'No standard was read' }}

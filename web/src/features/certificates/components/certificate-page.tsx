@@ -11,10 +11,12 @@ import { CertifiedResults } from './certified-results'
 import { DocumentBox, ProofBox } from './document-box'
 import './certificates.css'
 
+const LIST = { to: paths.certificates, label: 'Certificates' }
+
 /** One certificate, for the laboratory: the document beside its data. */
 export function CertificateById({ id }: { id: string }) {
   return (
-    <Loaded query={useQuery(certificateQuery(id))} skeleton="page" what="certificate">
+    <Loaded query={useQuery(certificateQuery(id))} skeleton="page" what="certificate" back={LIST}>
       {(certificate) => <CertificateOnPage certificate={certificate} />}
     </Loaded>
   )
@@ -28,7 +30,7 @@ function CertificateOnPage({ certificate }: { certificate: CertificateView }) {
     <MarginPage
       title={`Certificate ${certificate.number}`}
       subtitle={`${certificate.clientName}, ${certificate.pointName}`}
-      back={{ to: paths.certificates, label: 'Certificates' }}
+      back={LIST}
       state={<StatusTag mark={STATE_MARKS.certificate[certificate.state]} />}
       facts={[
         { term: 'Issued', detail: `${withOffset(certificate.issuedAt)} by ${certificate.issuedBy.name}` },

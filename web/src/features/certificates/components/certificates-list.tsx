@@ -21,6 +21,7 @@ export function CertificatesList() {
     {
       key: 'state',
       title: 'State',
+      onPhone: 'corner',
       cell: (row) => <StatusTag mark={STATE_MARKS.certificate[row.state]} />,
     },
     {

@@ -44,9 +44,10 @@ export function CertifiedResults({ snapshot }: { snapshot: CertificateSnapshot }
       key: 'uncertainty',
       title: 'U, k = 2',
       kind: 'number',
+      onPhone: 'beside',
       text: (line) => line.uncertaintyText || null,
     },
-    { key: 'unit', title: 'Unit', isNarrow: true, text: (line) => line.unit },
+    { key: 'unit', title: 'Unit', isNarrow: true, onPhone: 'beside', text: (line) => line.unit },
     {
       key: 'quantification',
       title: 'Quantif. limit',

@@ -1,5 +1,5 @@
 import { useQuery } from '@tanstack/react-query'
-import { controlChart } from '@weirlight/shared/charts'
+import { controlChart, controlNumbers } from '@weirlight/shared/charts'
 import { useMemo } from 'react'
 import { Link, useNavigate } from 'react-router-dom'
 import { paths, useFilters, useLaboratoryTime } from '../../../lib'
@@ -11,7 +11,7 @@ import {
   type ControlChartView,
   type ControlKind,
 } from '../api/chart-queries'
-import { chartWords, shortNumber, signalLines, type SignalLine } from '../signal-lines'
+import { chartWords, signalLines, type SignalLine } from '../signal-lines'
 import './charts.css'
 
 const KINDS: readonly { value: ControlKind; label: string }[] = [
@@ -122,6 +122,7 @@ function Where({ row }: { row: { batchId: string | null; label: string } }) {
 function Signals({ chart }: { chart: ControlChartView }) {
   const { at } = useLaboratoryTime()
   const lines = signalLines(chart)
+  const shown = controlNumbers(chart)
   const columns: Column<SignalLine>[] = [
     {
       key: 'words',
@@ -137,7 +138,7 @@ function Signals({ chart }: { chart: ControlChartView }) {
       title: 'Value',
       unit: chart.unit,
       kind: 'number',
-      text: (row) => shortNumber(row.value),
+      text: (row) => shown(row.value),
     },
   ]
   if (chart.points.length === 0) return null
@@ -164,6 +165,7 @@ type Point = ControlChartView['points'][number]
 function Values({ chart }: { chart: ControlChartView }) {
   const { at } = useLaboratoryTime()
   if (chart.points.length === 0) return null
+  const shown = controlNumbers(chart)
   const columns: Column<Point>[] = [
     { key: 'where', title: 'Where', cell: (row) => <Where row={row} /> },
     { key: 'at', title: 'When', isNarrow: true, text: (row) => at(row.at) },
@@ -172,7 +174,7 @@ function Values({ chart }: { chart: ControlChartView }) {
       title: 'Value',
       unit: chart.unit,
       kind: 'number',
-      text: (row) => shortNumber(row.value),
+      text: (row) => shown(row.value),
     },
   ]
   return (

@@ -105,6 +105,7 @@ export function ChangeClient({ client, onDone }: { client: ClientView; onDone: (
       },
     }),
     invalidates: TOUCHES,
+    basedOn: client.version,
     onDone: () => {
       notice.done('The particulars are changed.')
       onDone()

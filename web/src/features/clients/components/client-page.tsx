@@ -11,9 +11,11 @@ import { ChangeClient } from './client-form'
 import { ContactsBox } from './contacts-box'
 import { PointsBox } from './points-box'
 
+const LIST = { to: paths.clients, label: 'Clients' }
+
 export function ClientById({ id }: { id: string }) {
   return (
-    <Loaded query={useQuery(clientQuery(id))} skeleton="page" what="client">
+    <Loaded query={useQuery(clientQuery(id))} skeleton="page" what="client" back={LIST}>
       {(client) => <ClientPage client={client} />}
     </Loaded>
   )
@@ -27,7 +29,7 @@ function ClientPage({ client }: { client: ClientView }) {
     <MarginPage
       title={client.name}
       subtitle={`Client ${client.code}`}
-      back={{ to: paths.clients, label: 'Clients' }}
+      back={LIST}
       state={<StatusTag mark={activeMark(client)} />}
       foldLabel="Programme and agency"
       facts={[

@@ -17,6 +17,9 @@ import { TOUCHES, type Contact } from '../api/client-queries'
 
 type Values = BodyInput<typeof addContact>
 
+const fresh = (contacts: readonly Contact[], asked: Contact) =>
+  contacts.find((each) => each.id === asked.id) ?? asked
+
 const yesNo = (is: boolean) => (is ? 'yes' : <span className="quiet">no</span>)
 
 /** Who at the client is written to. */
@@ -27,6 +30,8 @@ export function ContactsBox({ client }: { client: ClientView }) {
     null,
   )
   const close = () => setAsked(null)
+  // as it stands now, should somebody change it while the dialogue is open
+  const contact = asked && asked.act !== 'add' ? fresh(client.contacts, asked.contact) : null
   const mayManage = may('clients.manage')
   const remove = useCall(removeContact, {
     invalidates: TOUCHES,
@@ -41,14 +46,14 @@ export function ContactsBox({ client }: { client: ClientView }) {
       key: 'acts',
       title: <span className="visually-hidden">What can be done</span>,
       isNarrow: true,
-      cell: (contact) =>
+      cell: (row) =>
         mayManage && (
           <span className="row">
-            <Button size="small" onClick={() => setAsked({ act: 'change', contact })}>
-              Change<span className="visually-hidden"> {contact.name}</span>
+            <Button size="small" onClick={() => setAsked({ act: 'change', contact: row })}>
+              Change<span className="visually-hidden"> {row.name}</span>
             </Button>
-            <Button size="small" danger onClick={() => setAsked({ act: 'remove', contact })}>
-              Remove<span className="visually-hidden"> {contact.name}</span>
+            <Button size="small" danger onClick={() => setAsked({ act: 'remove', contact: row })}>
+              Remove<span className="visually-hidden"> {row.name}</span>
             </Button>
           </span>
         ),
@@ -71,22 +76,22 @@ export function ContactsBox({ client }: { client: ClientView }) {
         <ContactForm client={client} contact={null} onDone={close} />
       </FormDialog>
       <FormDialog isOpen={asked?.act === 'change'} onClose={close} title="Change the contact">
-        {asked?.act === 'change' && <ContactForm client={client} contact={asked.contact} onDone={close} />}
+        {contact && <ContactForm client={client} contact={contact} onDone={close} />}
       </FormDialog>
-      {asked?.act === 'remove' && (
+      {asked?.act === 'remove' && contact && (
         <ReasonDialog
           isOpen
           onClose={close}
-          title={`Stop writing to ${asked.contact.name}`}
+          title={`Stop writing to ${contact.name}`}
           consequences={[
-            `${asked.contact.email} gets no more alerts and no more certificates. What was sent stays in the record.`,
+            `${contact.email} gets no more alerts and no more certificates. What was sent stays in the record.`,
           ]}
           actionLabel="Stop writing"
           isDangerous
           onConfirm={(reason) =>
             remove.mutateAsync({
-              params: { id: asked.contact.id },
-              body: { version: asked.contact.version, reason },
+              params: { id: contact.id },
+              body: { version: contact.version, reason },
             })
           }
         />
@@ -141,6 +146,7 @@ function ChangeForm({ contact, onDone }: ContactFormProps & { contact: Contact }
       body: { ...valuesOf(values), version: contact.version },
     }),
     invalidates: TOUCHES,
+    basedOn: contact.version,
     onDone: () => {
       notice.done('The contact is changed.')
       onDone()

@@ -23,7 +23,7 @@ export function PointsBox({ client }: { client: ClientView }) {
     { key: 'code', title: 'Code', text: (row) => row.code },
     { key: 'name', title: 'Sampling point', text: (row) => row.name },
     { key: 'kind', title: 'Water', text: (row) => POINT_KINDS[row.kind] },
-    { key: 'state', title: 'State', cell: (row) => <StatusTag mark={activeMark(row)} /> },
+    { key: 'state', title: 'State', onPhone: 'corner', cell: (row) => <StatusTag mark={activeMark(row)} /> },
     {
       key: 'acts',
       title: <span className="visually-hidden">What can be done</span>,
@@ -63,7 +63,9 @@ export function PointsBox({ client }: { client: ClientView }) {
         onClose={close}
         title="Change the sampling point"
       >
-        {asked !== null && asked !== 'add' && <ChangePoint point={asked} onDone={close} />}
+        {asked !== null && asked !== 'add' && (
+          <ChangePoint point={client.points.find((each) => each.id === asked.id) ?? asked} onDone={close} />
+        )}
       </FormDialog>
     </Box>
   )
@@ -114,6 +116,7 @@ function ChangePoint({ point, onDone }: { point: SamplingPoint; onDone: () => vo
     endpoint: changePoint,
     toInput: (values) => ({ params: { id: point.id }, body: { ...values, version: point.version } }),
     invalidates: TOUCHES,
+    basedOn: point.version,
     onDone: () => {
       notice.done(`${point.code} is changed.`)
       onDone()

@@ -16,9 +16,11 @@ import {
 import { CHECK_WORDS, FAILED, instrumentMark, PASSED } from '../instrument-words'
 import { RecordCheck } from './record-check'
 
+const LIST = { to: paths.instruments, label: 'Instruments' }
+
 export function InstrumentById({ id }: { id: string }) {
   return (
-    <Loaded query={useQuery(instrumentQuery(id))} skeleton="page" what="instrument">
+    <Loaded query={useQuery(instrumentQuery(id))} skeleton="page" what="instrument" back={LIST}>
       {(instrument) => <InstrumentPage instrument={instrument} />}
     </Loaded>
   )
@@ -31,7 +33,7 @@ function InstrumentPage({ instrument }: { instrument: InstrumentView }) {
     <MarginPage
       title={instrument.name}
       subtitle={instrument.number}
-      back={{ to: paths.instruments, label: 'Instruments' }}
+      back={LIST}
       state={<StatusTag mark={instrumentMark(instrument, today())} />}
       foldLabel="The instrument in short"
       facts={[
@@ -92,7 +94,7 @@ function Checks({ checks }: { checks: InstrumentView['checks'] }) {
     { key: 'nominal', title: 'Nominal', kind: 'number', text: (row) => row.nominal },
     { key: 'found', title: 'Found', kind: 'number', text: (row) => row.found },
     { key: 'tolerance', title: 'Tolerance', kind: 'number', text: (row) => `± ${row.tolerance}` },
-    { key: 'unit', title: 'Unit', text: (row) => row.unit },
+    { key: 'unit', title: 'Unit', onPhone: 'beside', text: (row) => row.unit },
     { key: 'reference', title: 'Against', text: (row) => row.reference },
     { key: 'by', title: 'By', text: (row) => row.checkedBy.name },
     { key: 'next', title: 'Next due', text: (row) => row.nextDueOn },

@@ -16,7 +16,12 @@ export function InstrumentsList() {
       columns={[
         { key: 'number', title: 'Number', text: (row) => row.number },
         { key: 'name', title: 'Instrument', text: (row) => row.name },
-        { key: 'state', title: 'State', cell: (row) => <StatusTag mark={instrumentMark(row, today())} /> },
+        {
+          key: 'state',
+          title: 'State',
+          onPhone: 'corner',
+          cell: (row) => <StatusTag mark={instrumentMark(row, today())} />,
+        },
         { key: 'due', title: 'Next check', text: (row) => row.nextCheckDueOn ?? 'none on record' },
         { key: 'where', title: 'Stands in', text: (row) => row.location },
         { key: 'kind', title: 'Kind', text: (row) => row.kind, isSecondary: true },

@@ -22,7 +22,7 @@ export function LaboratoryParticulars() {
     <Loaded query={useQuery(queryFor(getLaboratory))}>
       {(laboratory) =>
         may('laboratory.manage') ? (
-          <LaboratoryForm key={laboratory.version} laboratory={laboratory} />
+          <LaboratoryForm laboratory={laboratory} />
         ) : (
           <Box title="The laboratory">
             <KeyValues
@@ -48,6 +48,7 @@ function LaboratoryForm({ laboratory }: { laboratory: Laboratory }) {
     endpoint: changeLaboratory,
     toInput: (values) => ({ body: { ...values, version: laboratory.version } }),
     invalidates: [getLaboratory, getSession],
+    basedOn: laboratory.version,
     onDone: () => notice.done('Changed. Certificates issued from now on carry it.'),
   })
   return (

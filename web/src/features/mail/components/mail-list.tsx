@@ -33,7 +33,12 @@ export function MailList() {
   })
   const columns: Column<Message>[] = [
     { key: 'when', title: 'Written', isNarrow: true, text: (row) => at(row.createdAt) },
-    { key: 'state', title: 'State', cell: (row) => <StatusTag mark={STATE_MARKS.mail[row.state]} /> },
+    {
+      key: 'state',
+      title: 'State',
+      onPhone: 'corner',
+      cell: (row) => <StatusTag mark={STATE_MARKS.mail[row.state]} />,
+    },
     { key: 'to', title: 'To', text: (row) => row.to },
     {
       key: 'subject',

@@ -27,10 +27,12 @@ import { materialQuery, type MaterialView } from '../api/material-queries'
 import { KIND_WORDS, strengthWords, usableMark } from '../material-words'
 import { materialColumns } from './material-columns'
 
+const LIST = { to: paths.materials, label: 'Materials' }
+
 /** One lot: where it came from, and everything it touched. */
 export function MaterialById({ id }: { id: string }) {
   return (
-    <Loaded query={useQuery(materialQuery(id))} skeleton="page" what="lot">
+    <Loaded query={useQuery(materialQuery(id))} skeleton="page" what="lot" back={LIST}>
       {(lot) => <MaterialPage lot={lot} />}
     </Loaded>
   )
@@ -44,7 +46,7 @@ function MaterialPage({ lot }: { lot: MaterialView }) {
     <MarginPage
       title={`Lot ${lot.number}`}
       subtitle={lot.name}
-      back={{ to: paths.materials, label: 'Materials' }}
+      back={LIST}
       state={<StatusTag mark={mark} />}
       foldLabel="The lot in short"
       facts={[

@@ -27,6 +27,8 @@ import {
 } from './method-facts'
 import { methodMark } from './methods-list'
 
+const LIST = { to: paths.methods, label: 'Methods' }
+
 /** The whole catalogue entry of a method, readable at the bench. */
 export function MethodById({
   id,
@@ -36,7 +38,7 @@ export function MethodById({
   programmeNames: ReadonlyMap<string, string>
 }) {
   return (
-    <Loaded query={useQuery(methodQuery(id))} skeleton="page" what="method">
+    <Loaded query={useQuery(methodQuery(id))} skeleton="page" what="method" back={LIST}>
       {(method) => <MethodPage method={method} programmeNames={programmeNames} />}
     </Loaded>
   )
@@ -56,7 +58,7 @@ function MethodPage({
     <MarginPage
       title={method.title}
       subtitle={determinationName(method.analyte, method.form)}
-      back={{ to: paths.methods, label: 'Methods' }}
+      back={LIST}
       state={<StatusTag mark={methodMark(method)} />}
       foldLabel="The method in short"
       facts={[

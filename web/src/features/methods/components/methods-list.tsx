@@ -11,7 +11,7 @@ export const methodMark = (method: Pick<MethodRow, 'active'>) => (method.active 
 const COLUMNS: Column<MethodRow>[] = [
   { key: 'title', title: 'Method', text: (row) => row.title },
   { key: 'what', title: 'Determines', text: (row) => determinationName(row.analyte, row.form) },
-  { key: 'state', title: 'State', cell: (row) => <StatusTag mark={methodMark(row)} /> },
+  { key: 'state', title: 'State', onPhone: 'corner', cell: (row) => <StatusTag mark={methodMark(row)} /> },
   { key: 'nm', title: 'Read at', unit: 'nm', kind: 'number', text: (row) => String(row.wavelengthNm) },
   {
     key: 'force',

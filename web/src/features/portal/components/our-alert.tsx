@@ -20,10 +20,12 @@ import {
 import { DeliveriesTable } from '../../mail'
 import './portal.css'
 
+const LIST = { to: paths.portalAlerts, label: 'Our alerts' }
+
 /** One alert of ours: what was found, what the law’s clocks say, and our answer. */
 export function OurAlert({ id }: { id: string }) {
   return (
-    <Loaded query={useQuery(alertQuery(id))} skeleton="page" what="alert">
+    <Loaded query={useQuery(alertQuery(id))} skeleton="page" what="alert" back={LIST}>
       {(alert) => <AlertOfOurs alert={alert} />}
     </Loaded>
   )
@@ -38,7 +40,7 @@ function AlertOfOurs({ alert }: { alert: AlertView }) {
     <MarginPage
       title={whatWasFound(alert)}
       subtitle={`${alert.pointName} · ${alert.number}`}
-      back={{ to: paths.portalAlerts, label: 'Our alerts' }}
+      back={LIST}
       state={<StatusTag mark={STATE_MARKS.alert[alert.state]} />}
     >
       <div className="stack">

@@ -115,9 +115,11 @@ function CertificateLine({ row }: { row: CertificateRow }) {
   )
 }
 
+const LIST = { to: paths.portalCertificates, label: 'Our certificates' }
+
 export function OurCertificate({ id }: { id: string }) {
   return (
-    <Loaded query={useQuery(certificateQuery(id))} skeleton="page" what="certificate">
+    <Loaded query={useQuery(certificateQuery(id))} skeleton="page" what="certificate" back={LIST}>
       {(certificate) => <CertificateOfOurs certificate={certificate} />}
     </Loaded>
   )
@@ -130,7 +132,7 @@ function CertificateOfOurs({ certificate }: { certificate: CertificateView }) {
     <MarginPage
       title={`Certificate ${certificate.number}`}
       subtitle={`${certificate.pointName} · issued ${at(certificate.issuedAt)}`}
-      back={{ to: paths.portalCertificates, label: 'Our certificates' }}
+      back={LIST}
       state={<StatusTag mark={STATE_MARKS.certificate[certificate.state]} />}
     >
       <Replaced certificate={certificate} to={paths.portalCertificate} />

@@ -1,27 +1,25 @@
 import { useQuery } from '@tanstack/react-query'
 import { paths, useFilters } from '../../../lib'
-import { Box, Empty, Loaded, MarginPage, NotFound } from '../../../ui'
+import { Box, Empty, Loaded, MarginPage, NotFoundPage } from '../../../ui'
 import { determinationOf } from '../../results'
 import { latestAtPointQuery, utilityQuery } from '../api/portal-queries'
 import { latestOfEach } from '../latest'
 import { OwnResults } from './own-results'
 import { OwnTrend } from './own-trend'
 
+const LIST = { to: paths.portalPoints, label: 'Our points' }
+
 /** One of our points: the trend of every determination made there, and its results. */
 export function OurPoint({ id }: { id: string }) {
   const [chosen] = useFilters({ analyte: '', form: '' })
   const results = useQuery(latestAtPointQuery(id))
   return (
-    <Loaded query={useQuery(utilityQuery)} skeleton="page">
+    <Loaded query={useQuery(utilityQuery)} skeleton="page" what="point" back={LIST}>
       {(utility) => {
         const point = utility.points.find((each) => each.id === id)
-        if (!point) return <NotFound what="point of ours" />
+        if (!point) return <NotFoundPage what="point of ours" back={LIST} />
         return (
-          <MarginPage
-            title={point.name}
-            subtitle={point.code}
-            back={{ to: paths.portalPoints, label: 'Our points' }}
-          >
+          <MarginPage title={point.name} subtitle={point.code} back={LIST}>
             <Loaded query={results}>
               {({ items, next }) => {
                 const latest = latestOfEach(items).toSorted(

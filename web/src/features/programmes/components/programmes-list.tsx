@@ -116,7 +116,7 @@ const columnsOn = (day: string): Column<Limit>[] => [
     text: (row) => row.value,
     wrap: (_, aligned) => <span className="strong">{aligned}</span>,
   },
-  { key: 'unit', title: 'Unit', text: (row) => showUnit(row.unit) },
+  { key: 'unit', title: 'Unit', onPhone: 'beside', text: (row) => showUnit(row.unit) },
   {
     key: 'rule',
     title: 'How it is compared',

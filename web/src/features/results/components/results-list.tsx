@@ -84,7 +84,6 @@ function useColumns(): Column<ResultRow>[] {
       key: 'collected',
       title: 'Collected',
       isNarrow: true,
-      isSecondary: true,
       text: (row) => at(row.collectedAt),
     },
     {
@@ -116,10 +115,10 @@ function useColumns(): Column<ResultRow>[] {
       key: 'uncertainty',
       title: 'U, k = 2',
       kind: 'number',
-      isSecondary: true,
+      onPhone: 'beside',
       text: (row) => (row.uncertaintyText === null ? null : plusMinus(row.uncertaintyText)),
     },
-    { key: 'unit', title: 'Unit', isNarrow: true, text: (row) => showUnit(row.unit) },
+    { key: 'unit', title: 'Unit', isNarrow: true, onPhone: 'beside', text: (row) => showUnit(row.unit) },
     {
       key: 'finding',
       title: 'Finding',
@@ -137,7 +136,7 @@ function useColumns(): Column<ResultRow>[] {
     {
       key: 'state',
       title: 'State',
-      isSecondary: true,
+      onPhone: 'corner',
       cell: (row) => <StatusTag mark={STATE_MARKS.result[row.state]} />,
     },
     {

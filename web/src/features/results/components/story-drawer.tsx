@@ -5,14 +5,7 @@ import { paths } from '../../../lib'
 import { Loaded, StatusTag, Strip } from '../../../ui'
 import { storyQuery, type StoryView } from '../api/result-queries'
 import { determinationOf, findingOf, withUnit } from '../result-words'
-import {
-  SameMark,
-  StoredAndRecomputed,
-  StoryChanges,
-  StoryLines,
-  StoryReadings,
-  TintRead,
-} from './story-parts'
+import { StoryChanges, StoryLines, StoryReadings, TintRead } from './story-parts'
 import { TakeAway } from './take-away'
 
 /** What any reported number anywhere opens. A dialog of the browser's own: keyboard and reader stay inside it. */
@@ -77,9 +70,6 @@ function StoryInDrawer({ story }: { story: StoryView }) {
               </>
             )}
           </div>
-          <div className="quiet">
-            Stored and computed again: <SameMark story={story} />
-          </div>
         </div>
         <TintRead story={story} />
       </div>
@@ -88,10 +78,7 @@ function StoryInDrawer({ story }: { story: StoryView }) {
           Computed again from the readings, this is not the stored value. Do not use it; tell the QA manager.
         </Strip>
       )}
-      <StoryLines lines={story.lines} />
-      <div className="box">
-        <StoredAndRecomputed story={story} />
-      </div>
+      <StoryLines story={story} />
       <StoryChanges changes={story.changes} />
       <StoryReadings readings={story.readings} />
       <p className="note">

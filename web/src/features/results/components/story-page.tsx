@@ -5,22 +5,15 @@ import { paths, useCan, useLaboratoryTime, useSession } from '../../../lib'
 import { Loaded, MarginPage, StatusTag, Strip } from '../../../ui'
 import { storyQuery, type StoryView } from '../api/result-queries'
 import { determinationOf, findingOf, flagWords, withUnit } from '../result-words'
-import {
-  SameMark,
-  StoredAndRecomputed,
-  StoryChanges,
-  StoryLines,
-  StoryLots,
-  StoryReadings,
-  StoryStandards,
-  TintRead,
-} from './story-parts'
+import { StoryChanges, StoryLines, StoryLots, StoryReadings, StoryStandards, TintRead } from './story-parts'
 import { TakeAway } from './take-away'
+
+const LIST = { to: paths.results, label: 'Results' }
 
 /** Pick one number: the page of everything behind it. */
 export function StoryById({ id }: { id: string }) {
   return (
-    <Loaded query={useQuery(storyQuery(id))} skeleton="page" what="result">
+    <Loaded query={useQuery(storyQuery(id))} skeleton="page" what="result" back={LIST}>
       {(story) => <StoryOnPage story={story} />}
     </Loaded>
   )
@@ -41,7 +34,7 @@ function StoryOnPage({ story }: { story: StoryView }) {
           {determinationOf(result)} · <Link to={paths.sample(result.sampleId)}>{result.sampleNumber}</Link>
         </>
       }
-      back={{ to: paths.results, label: 'Results' }}
+      back={LIST}
       state={<StatusTag mark={finding.mark}>{`${finding.words} ${limitUnitOf(result)}`.trim()}</StatusTag>}
       facts={[
         result.limitName !== null && { term: 'Limit', detail: result.limitName },
@@ -73,7 +66,6 @@ function StoryOnPage({ story }: { story: StoryView }) {
         { term: 'Collected', detail: at(result.collectedAt) },
         story.tint && { term: 'Tint read', detail: <TintRead story={story} /> },
         flags.length > 0 && { term: 'Flags', detail: flags.join(', ') },
-        { term: 'Stored and computed again', detail: <SameMark story={story} /> },
       ]}
       foldLabel="Certificate, sample and tint"
       notes={[<TakeAway key="take" story={story} canPrint />, story.caution]}
@@ -90,10 +82,7 @@ function StoryOnPage({ story }: { story: StoryView }) {
         {nowText()}.
       </p>
       <div className="stack">
-        <StoryLines lines={story.lines} />
-        <div className="box">
-          <StoredAndRecomputed story={story} />
-        </div>
+        <StoryLines story={story} />
         <StoryChanges changes={story.changes} />
         <StoryReadings readings={story.readings} />
         <StoryStandards story={story} />

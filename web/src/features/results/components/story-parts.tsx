@@ -17,16 +17,23 @@ const PLACES: readonly (readonly [start: string, word: string])[] = [
 ]
 const placeWord = (to: string) => PLACES.find(([start]) => to.startsWith(start))?.[1] ?? 'Open'
 
+/** the line that compares what is stored with what comes out today; drawn as values beside each other */
+const COMPUTED = 'Computed'
+
 /** From the number on the certificate back to the bottle and the stock, in the order it is asked. */
-export function StoryLines({ lines }: { lines: StoryView['lines'] }) {
+export function StoryLines({ story }: { story: StoryView }) {
   return (
     <dl className="story-lines">
-      {lines.map((line) => (
+      {story.lines.map((line) => (
         <div key={line.heading}>
           <dt>{line.heading}</dt>
           <dd>
             <div className="story-main">{line.main}</div>
-            <div className="story-more">{line.detail}</div>
+            {line.heading === COMPUTED ? (
+              <StoredAndRecomputed story={story} detail={line.detail} />
+            ) : (
+              <div className="story-more">{line.detail}</div>
+            )}
           </dd>
           <dd className="no-print">{line.to && <Link to={line.to}>{placeWord(line.to)}</Link>}</dd>
         </div>
@@ -38,12 +45,8 @@ export function StoryLines({ lines }: { lines: StoryView['lines'] }) {
 const SAME = { word: 'same', shape: 'disc', tone: 'meets' } as const
 const DIFFERENT = { word: 'different', shape: 'triangle', tone: 'above' } as const
 
-export function SameMark({ story }: { story: StoryView }) {
-  return <StatusTag mark={story.same ? SAME : DIFFERENT} />
-}
-
 /** The stored number beside the one that today's code finds from the same readings. */
-export function StoredAndRecomputed({ story }: { story: StoryView }) {
+function StoredAndRecomputed({ story, detail }: { story: StoryView; detail: string }) {
   return (
     <dl className="story-same">
       <dt>Stored</dt>
@@ -54,7 +57,8 @@ export function StoredAndRecomputed({ story }: { story: StoryView }) {
       <dd>{story.engineVersion}</dd>
       <dt>They are</dt>
       <dd>
-        <SameMark story={story} />
+        <StatusTag mark={story.same ? SAME : DIFFERENT} />
+        {!story.same && <div className="story-more">{detail}</div>}
       </dd>
     </dl>
   )

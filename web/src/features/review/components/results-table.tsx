@@ -56,11 +56,13 @@ export function ResultsTable({ batch, rerun }: ResultsTableProps) {
       key: 'uncertainty',
       title: 'U, k = 2',
       kind: 'number',
+      onPhone: 'beside',
       text: (row) => shownNumbers(row, row.assessment).uncertainty,
     },
     {
       key: 'unit',
       title: 'Unit',
+      onPhone: 'beside',
       cell: (row) => UNIT_WORDS[row.assessment.unit ?? row.reporting.displayUnit],
     },
     {

@@ -30,9 +30,11 @@ import { ResultsTable } from './results-table'
 
 const TOUCHES = [getBatch, listBatches, listResults, listSamples]
 
+const LIST = { to: paths.review, label: 'Review' }
+
 export function ReviewBatchById({ id }: { id: string }) {
   return (
-    <Loaded query={useQuery(batchQuery(id))} skeleton="page" what="batch">
+    <Loaded query={useQuery(batchQuery(id))} skeleton="page" what="batch" back={LIST}>
       {(batch) => <ReviewBatch key={`${batch.id} ${batch.version}`} batch={batch} />}
     </Loaded>
   )
@@ -79,7 +81,7 @@ function ReviewBatch({ batch }: { batch: BatchView }) {
     <MarginPage
       title={`Review ${batch.number}`}
       subtitle={batch.methodTitle}
-      back={{ to: paths.review, label: 'Review' }}
+      back={LIST}
       state={<StatusTag mark={STATE_MARKS.batch[batch.state]} />}
       facts={facts}
       notes={batchNotes(batch)}

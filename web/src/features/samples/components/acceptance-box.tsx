@@ -4,7 +4,7 @@ import { Button, Form, Input } from 'antd'
 import { useState } from 'react'
 import { useCall, useCan, useNotice } from '../../../lib'
 import { useEndpointForm } from '../../../lib/use-endpoint-form'
-import { Box, KeyValues, MarkShape, StatusTag, Strip } from '../../../ui'
+import { Box, KeyValues, MarkShape, StatusTag, Refused } from '../../../ui'
 import { DialogFoot, FormDialog } from '../../../ui/form-dialog'
 import { FormProblem } from '../../../ui/form-problem'
 import { TOUCHES, type SampleView } from '../api/sample-queries'
@@ -86,11 +86,7 @@ function Decision({ sample }: { sample: SampleView }) {
   const tone = (verdict: Verdict) => (sample.suggested === verdict ? 'primary' : 'default')
   return (
     <div className="box-foot">
-      {accept.error && (
-        <Strip tone="above" isAlert>
-          {accept.error.errors[0]?.message ?? accept.error.message}
-        </Strip>
-      )}
+      <Refused problem={accept.error} reset={accept.reset} />
       <div className="row">
         {sample.suggested === 'accepted' && (
           <Button type="primary" loading={accept.isPending} onClick={acceptNow}>

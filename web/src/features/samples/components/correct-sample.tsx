@@ -22,6 +22,7 @@ export function CorrectSample({ sample, onDone }: { sample: SampleView; onDone: 
       body: { ...values, reason: values.reason ?? '', version: sample.version },
     }),
     invalidates: TOUCHES,
+    basedOn: sample.version,
     onDone: () => {
       notice.done(`${sample.number} is corrected. Its holding times are computed again.`)
       onDone()

@@ -40,6 +40,9 @@ export function DeterminationsBox({ sample }: { sample: SampleView }) {
     invalidates: TOUCHES,
     onDone: () => notice.done('The determination is withdrawn.'),
   })
+  // as it stands now, should somebody change it while the dialogue is open
+  const chosen =
+    asked === null || asked === 'add' ? null : (sample.details.find((row) => row.id === asked.id) ?? asked)
   const mayReceive = may('samples.receive')
   const isClosed = sample.state === 'rejected' || sample.state === 'disposed'
   const columns: Column<Determination>[] = [
@@ -59,6 +62,7 @@ export function DeterminationsBox({ sample }: { sample: SampleView }) {
     {
       key: 'state',
       title: 'State',
+      onPhone: 'corner',
       cell: (row) => <StatusTag mark={STATE_MARKS.determination[row.state]} />,
     },
     { key: 'holding', title: 'Holding time', cell: (row) => <Holding of={row} /> },
@@ -84,6 +88,7 @@ export function DeterminationsBox({ sample }: { sample: SampleView }) {
     {
       key: 'unit',
       title: 'Unit',
+      onPhone: 'beside',
       text: (row) => (row.reportedText === null ? '' : showUnit(row.unit ?? '')),
     },
     {
@@ -128,16 +133,16 @@ export function DeterminationsBox({ sample }: { sample: SampleView }) {
       <FormDialog isOpen={asked === 'add'} onClose={close} title={`Determine more in ${sample.number}`}>
         <AddDetermination sample={sample} onDone={close} />
       </FormDialog>
-      {asked !== null && asked !== 'add' && (
+      {chosen && (
         <ReasonDialog
           isOpen
           onClose={close}
-          title={`Withdraw ${determinationName(asked.analyte, asked.form)}`}
+          title={`Withdraw ${determinationName(chosen.analyte, chosen.form)}`}
           consequences={['It leaves the waiting list and is not measured. The request stays in the record.']}
           actionLabel="Withdraw"
           isDangerous
           onConfirm={(reason) =>
-            withdraw.mutateAsync({ params: { id: asked.id }, body: { version: asked.version, reason } })
+            withdraw.mutateAsync({ params: { id: chosen.id }, body: { version: chosen.version, reason } })
           }
         />
       )}

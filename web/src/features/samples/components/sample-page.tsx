@@ -12,9 +12,11 @@ import { AcceptanceBox } from './acceptance-box'
 import { CorrectSample } from './correct-sample'
 import { DeterminationsBox } from './determinations-box'
 
+const LIST = { to: paths.receiving, label: 'Receiving' }
+
 export function SampleById({ id }: { id: string }) {
   return (
-    <Loaded query={useQuery(sampleQuery(id))} skeleton="page" what="sample">
+    <Loaded query={useQuery(sampleQuery(id))} skeleton="page" what="sample" back={LIST}>
       {(sample) => <SamplePage sample={sample} />}
     </Loaded>
   )
@@ -31,7 +33,7 @@ function SamplePage({ sample }: { sample: SampleView }) {
     <MarginPage
       title={`Sample ${sample.number}`}
       subtitle={`${sample.pointName} · ${sample.clientName}`}
-      back={{ to: paths.receiving, label: 'Receiving' }}
+      back={LIST}
       state={<StatusTag mark={STATE_MARKS.sample[sample.state]} />}
       foldLabel="Who, where and when"
       facts={[

@@ -33,6 +33,7 @@ export function SampleRegister() {
     {
       key: 'state',
       title: 'State',
+      onPhone: 'corner',
       cell: (row) => <StatusTag mark={STATE_MARKS.sample[row.state]} />,
     },
     {

@@ -47,7 +47,12 @@ export function PeopleList() {
         columns={[
           { key: 'name', title: 'Name', text: (row) => row.name },
           { key: 'role', title: 'Role', text: (row) => ROLE_NAMES[row.role] },
-          { key: 'state', title: 'State', cell: (row) => <StatusTag mark={STATE_MARKS.user[row.status]} /> },
+          {
+            key: 'state',
+            title: 'State',
+            onPhone: 'corner',
+            cell: (row) => <StatusTag mark={STATE_MARKS.user[row.status]} />,
+          },
           { key: 'email', title: 'E-mail', text: (row) => row.email },
           { key: 'client', title: 'Utility', text: (row) => row.clientName ?? '' },
           {

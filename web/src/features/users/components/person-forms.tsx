@@ -29,6 +29,7 @@ export function ChangePerson({ person, onDone }: PersonFormProps) {
       },
     }),
     invalidates: TOUCHES,
+    basedOn: person.version,
     onDone: () => {
       notice.done(`${person.name} is changed.`)
       onDone()

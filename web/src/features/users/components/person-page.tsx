@@ -3,24 +3,20 @@ import { ROLE_NAMES } from '@weirlight/shared/permissions'
 import { STATE_MARKS } from '@weirlight/shared/states'
 import { Link } from 'react-router-dom'
 import { paths, useCan, useLaboratoryTime } from '../../../lib'
-import { Bar, Box, Loaded, MarginPage, NotFound, StatusTag, Strip } from '../../../ui'
+import { Bar, Box, Loaded, MarginPage, NotFoundPage, StatusTag, Strip } from '../../../ui'
 import { usersQuery, type UserView } from '../api/user-queries'
 import { mayBeAuthorised, ROLE_HINTS } from '../user-words'
 import { AuthorisationsOf } from './authorisations'
 import { PersonActions } from './person-actions'
 
+const LIST = { to: paths.settingsPeople, label: 'People' }
+
 export function PersonById({ id }: { id: string }) {
   return (
-    <Loaded query={useQuery(usersQuery)} skeleton="page">
+    <Loaded query={useQuery(usersQuery)} skeleton="page" what="person" back={LIST}>
       {({ items }) => {
         const person = items.find((each) => each.id === id)
-        return person ? (
-          <PersonPage person={person} />
-        ) : (
-          <div className="page-sheet">
-            <NotFound what="person" />
-          </div>
-        )
+        return person ? <PersonPage person={person} /> : <NotFoundPage what="person" back={LIST} />
       }}
     </Loaded>
   )
@@ -34,7 +30,7 @@ function PersonPage({ person }: { person: UserView }) {
     <MarginPage
       title={person.name}
       subtitle={person.email}
-      back={{ to: paths.settingsPeople, label: 'People' }}
+      back={LIST}
       state={<StatusTag mark={STATE_MARKS.user[person.status]} />}
       foldLabel="The account"
       facts={[
