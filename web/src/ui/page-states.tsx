@@ -89,7 +89,8 @@ export function NotFound({
         </Link>
       }
     >
-      The address may be mistyped, or what it names belongs to somebody else. {back.label} shows what there is.
+      The address may be mistyped, or what it names belongs to somebody else. {back.label} shows what there
+      is.
     </Empty>
   )
 }
