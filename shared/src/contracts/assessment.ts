@@ -24,8 +24,12 @@ export const assessmentRules = z.object({
   duplicateTolerancePercent: z.number(),
   spikeLowPercent: z.number(),
   spikeHighPercent: z.number(),
-  /** mg/L, a method blank must stay below */
+  /** mg/L, a method blank must stay below … */
   blankLimit: z.number(),
+  /** … or hold at most this part of what any sample of the run holds; absent in batches opened before it was judged */
+  blankSamplePart: z.number().optional(),
+  /** mg/L, the blank after a verification standard must stay below; absent where `blankLimit` was its limit */
+  verificationBlankLimit: z.number().optional(),
 })
 export type AssessmentRules = z.infer<typeof assessmentRules>
 export const positionLimit = z.object({

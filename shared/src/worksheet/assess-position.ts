@@ -28,6 +28,8 @@ export interface PositionToAssess {
   added: number | null
   /** the sample a duplicate or spike belongs to, already assessed */
   parent: Assessment | null
+  /** mg/L, of the sample of the run that holds least; null or absent while one of them is not read. For a method blank. */
+  leastInSamples?: number | null
   limits: readonly PositionLimit[]
   reporting: ReportingRules
 }
@@ -173,14 +175,9 @@ function control(given: {
   const { position, rules, concentration } = given
   switch (position.kind) {
     case 'blank':
-    case 'method-blank': {
-      const qcPassed = Math.abs(concentration) < rules.blankLimit
-      return {
-        qcValue: concentration,
-        qcPassed,
-        qcText: `${qcPassed ? 'below' : 'not below'} ${milligrams(rules.blankLimit)}`,
-      }
-    }
+      return belowLimit(concentration, rules.verificationBlankLimit ?? rules.blankLimit)
+    case 'method-blank':
+      return methodBlank({ rules, concentration, leastInSamples: position.leastInSamples ?? null })
     case 'verification':
     case 'control': {
       if (position.expected === null) return { qcText: 'no expected value' }
@@ -202,6 +199,36 @@ function control(given: {
     case 'sample':
       return {}
   }
+}
+
+function belowLimit(concentration: number, limit: number) {
+  const qcPassed = Math.abs(concentration) < limit
+  return {
+    qcValue: concentration,
+    qcPassed,
+    qcText: `${qcPassed ? 'below' : 'not below'} ${milligrams(limit)}`,
+  }
+}
+
+/** What the blank holds does no harm where every sample holds many times as much (Maine chapter 263, section 11, as read). */
+function methodBlank(given: {
+  rules: AssessmentRules
+  concentration: number
+  leastInSamples: number | null
+}): Partial<Assessment> {
+  const { rules, concentration, leastInSamples } = given
+  const found = belowLimit(concentration, rules.blankLimit)
+  const part = rules.blankSamplePart ?? 0
+  if (found.qcPassed || part === 0) return found
+  if (leastInSamples !== null && Math.abs(concentration) <= part * leastInSamples) {
+    return {
+      ...found,
+      qcPassed: true,
+      qcText: `at most ${part} of every sample`,
+      explanation: `${found.qcText}, yet at most ${part} of what any sample of the run holds`,
+    }
+  }
+  return { ...found, explanation: `and more than ${part} of what a sample of the run holds` }
 }
 
 function duplicate(given: {

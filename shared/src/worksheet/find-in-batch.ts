@@ -89,6 +89,9 @@ function findInPosition(
       `${name}: ${assessment.qcText ?? ''}${assessment.explanation ? `, ${assessment.explanation}` : ''}.`,
     )
   }
+  if (position.kind === 'method-blank' && assessment.qcPassed && assessment.explanation !== '') {
+    say('blank', 'caution', `${name}: ${assessment.explanation}.`)
+  }
   if (assessment.flags.includes('not-calculable'))
     say('not-calculable', 'failed', `${name}: ${assessment.explanation}`)
   if (assessment.flags.includes('above-range')) {

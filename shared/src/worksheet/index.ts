@@ -1,4 +1,5 @@
 export * from './assess-calibration.js'
 export * from './assess-position.js'
+export * from './assess-run.js'
 export * from './find-in-batch.js'
 export * from './read-back.js'

@@ -1,5 +1,5 @@
-import type { Assessment, AssessmentRules } from '@weirlight/shared/contracts'
-import { assessPosition, findInBatch, type Finding } from '@weirlight/shared/worksheet'
+import type { Assessment } from '@weirlight/shared/contracts'
+import { assessRun, findInBatch, type Finding } from '@weirlight/shared/worksheet'
 import type { BatchWholeRow, PositionReadingRow, PositionRow } from './batch-rows.js'
 
 export interface BatchWhole {
@@ -62,17 +62,20 @@ export function labelOf(row: PositionRow, samples: ReadonlyMap<string, PositionR
 export function assessBatch({ batch, positions, readings }: BatchWhole): AssessedBatch {
   const counting = countingReadings(readings)
   const byId = new Map(positions.map((row) => [row.id, row]))
-  const assessments = new Map<string, Assessment>()
-  const assess = (row: PositionRow) => {
-    const parent = assessments.get(row.ofPositionId ?? '') ?? null
-    assessments.set(
-      row.id,
-      assessOne(row, { readings: counting.get(row.id) ?? [], parent, rules: batch.rules }),
-    )
-  }
-  // a duplicate and a spike are judged by their sample
-  positions.filter(({ ofPositionId }) => ofPositionId === null).forEach(assess)
-  positions.filter(({ ofPositionId }) => ofPositionId !== null).forEach(assess)
+  const assessments = assessRun(
+    positions.map((row) => ({
+      id: row.id,
+      ofPositionId: row.ofPositionId,
+      kind: row.kind,
+      absorbances: (counting.get(row.id) ?? []).map(({ absorbanceText }) => Number(absorbanceText)),
+      dilution: Number(row.dilution),
+      expected: row.expected === null ? null : Number(row.expected),
+      added: row.added === null ? null : Number(row.added),
+      limits: row.limits,
+      reporting: row.reporting,
+    })),
+    batch.rules,
+  )
 
   const assessed = positions.flatMap((row): AssessedPosition[] => {
     const assessment = assessments.get(row.id)
@@ -111,25 +114,6 @@ export function assessBatch({ batch, positions, readings }: BatchWhole): Assesse
 }
 
 const isAbove = (verdict: Assessment['verdict']) => verdict === 'above' || verdict === 'conditional-above'
-
-function assessOne(
-  row: PositionRow,
-  given: { readings: readonly PositionReadingRow[]; parent: Assessment | null; rules: AssessmentRules },
-): Assessment {
-  return assessPosition(
-    {
-      kind: row.kind,
-      absorbances: given.readings.map(({ absorbanceText }) => Number(absorbanceText)),
-      dilution: Number(row.dilution),
-      expected: row.expected === null ? null : Number(row.expected),
-      added: row.added === null ? null : Number(row.added),
-      parent: given.parent,
-      limits: row.limits,
-      reporting: row.reporting,
-    },
-    given.rules,
-  )
-}
 
 function toCell(cells: readonly PositionReadingRow[], replicate: number) {
   const reading = cells.find((one) => one.replicate === replicate)

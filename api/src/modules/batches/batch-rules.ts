@@ -48,6 +48,8 @@ export function rulesOf(
     spikeLowPercent: acceptance.spikeRecoveryPercent.low,
     spikeHighPercent: acceptance.spikeRecoveryPercent.high,
     blankLimit: acceptance.methodBlank.reportingLimitPart * reportingLimit,
+    blankSamplePart: acceptance.methodBlank.samplePart,
+    verificationBlankLimit: acceptance.calibrationBlankPart.value * reportingLimit,
   }
 }
 

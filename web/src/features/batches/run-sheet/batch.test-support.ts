@@ -1,6 +1,6 @@
 import { fitCalibration } from '@weirlight/shared/assay'
 import type { BatchView, PositionView } from '@weirlight/shared/contracts'
-import { assessPosition, findInBatch } from '@weirlight/shared/worksheet'
+import { assessPosition, assessRun, findInBatch } from '@weirlight/shared/worksheet'
 
 const AT = '2026-12-01T10:15:00-05:00'
 export const INES = { id: '11', name: 'Ines Okafor' }
@@ -152,22 +152,21 @@ export function aBatch(rows: PositionView[], part: Partial<BatchView> = {}): Bat
 
 /** As the server would answer it: every position assessed, every finding found. */
 export function assessed(batch: BatchView): BatchView {
-  const rows = batch.rows.map((row) => ({
-    ...row,
-    assessment: assessPosition(
-      {
-        kind: row.kind,
-        absorbances: row.readings.map((reading) => Number(reading.absorbance)),
-        dilution: Number(row.dilution),
-        expected: row.expected === null ? null : Number(row.expected),
-        added: null,
-        parent: null,
-        limits: row.limits,
-        reporting: row.reporting,
-      },
-      batch.rules,
-    ),
-  }))
+  const assessments = assessRun(
+    batch.rows.map((row) => ({
+      id: row.id,
+      ofPositionId: row.ofPositionId,
+      kind: row.kind,
+      absorbances: row.readings.map((reading) => Number(reading.absorbance)),
+      dilution: Number(row.dilution),
+      expected: row.expected === null ? null : Number(row.expected),
+      added: row.added === null ? null : Number(row.added),
+      limits: row.limits,
+      reporting: row.reporting,
+    })),
+    batch.rules,
+  )
+  const rows = batch.rows.map((row) => ({ ...row, assessment: assessments.get(row.id) ?? NOT_READ }))
   const { findings } = findInBatch({
     positions: rows.map((row) => ({
       id: row.id,

@@ -1,4 +1,4 @@
-import { assessPosition, findInBatch } from '@weirlight/shared/worksheet'
+import { assessRun, findInBatch } from '@weirlight/shared/worksheet'
 import type { Assessment } from '@weirlight/shared/contracts'
 import type { BatchFinding, BatchView, PositionView } from '../api/batch-queries'
 import { readingIn, readingProblem, replicateColumns } from './cells'
@@ -20,8 +20,7 @@ const numberIn = (text: string): number | null =>
   text.trim() === '' || readingProblem(text) ? null : Number(text)
 
 /**
- * The run sheet as it stands in the cells, computed by the same functions of the engine that the server decides with. A duplicate or
- * spike is judged against the sample it belongs to, so samples come first.
+ * The run sheet as it stands in the cells, computed by the same functions that the server decides with.
  */
 export function liveBatch(given: {
   batch: BatchView
@@ -31,28 +30,20 @@ export function liveBatch(given: {
 }): LiveBatch {
   const { batch, textOf, now } = given
   const columns = replicateColumns(batch.replicates)
-  const assessments = new Map<string, Assessment>()
-  const assess = (row: PositionView) => {
-    const absorbances = columns.flatMap((column) => numberIn(textOf(row.id, column)) ?? [])
-    assessments.set(
-      row.id,
-      assessPosition(
-        {
-          kind: row.kind,
-          absorbances,
-          dilution: Number(row.dilution),
-          expected: row.expected === null ? null : Number(row.expected),
-          added: row.added === null ? null : Number(row.added),
-          parent: row.ofPositionId === null ? null : (assessments.get(row.ofPositionId) ?? null),
-          limits: row.limits,
-          reporting: row.reporting,
-        },
-        batch.rules,
-      ),
-    )
-  }
-  batch.rows.filter((row) => row.ofPositionId === null).forEach(assess)
-  batch.rows.filter((row) => row.ofPositionId !== null).forEach(assess)
+  const assessments = assessRun(
+    batch.rows.map((row) => ({
+      id: row.id,
+      ofPositionId: row.ofPositionId,
+      kind: row.kind,
+      absorbances: columns.flatMap((column) => numberIn(textOf(row.id, column)) ?? []),
+      dilution: Number(row.dilution),
+      expected: row.expected === null ? null : Number(row.expected),
+      added: row.added === null ? null : Number(row.added),
+      limits: row.limits,
+      reporting: row.reporting,
+    })),
+    batch.rules,
+  )
   const rows = batch.rows
     .map((row): LiveRow => ({ ...row, live: assessments.get(row.id) ?? row.assessment }))
     .toSorted((a, b) => a.position - b.position)
