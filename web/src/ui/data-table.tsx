@@ -64,7 +64,9 @@ export function DataTable<Row>(props: DataTableProps<Row>) {
     )
   }
   const isInBlocks =
-    !props.isTableOnPhone && columns.filter((column) => !column.isSecondary).length > COLUMNS_ON_A_PHONE
+    !props.isTableOnPhone &&
+    (columns.filter((column) => !column.isSecondary).length > COLUMNS_ON_A_PHONE ||
+      columns.some((column) => column.onPhone))
   return (
     <>
       {/* scrolls sideways by keyboard as well */}

@@ -6,6 +6,7 @@ export { Clock, ReadingWindow, Since } from './clock'
 export { DataTable, type Column } from './data-table'
 export { FilterBar, FilterDay, FilterSelect, FilterText } from './filter-bar'
 export { LoadAgain, Refused } from './load-again'
+export { MailAddress } from './mail-address'
 export { MarginPage } from './margin-page'
 export { NumberWithStory } from './number-with-story'
 export {

@@ -49,7 +49,7 @@ export function CurveBox({ live, definition }: CurveBoxProps) {
     () =>
       residualsChart({
         points: fit?.readBack ?? [],
-        upTo: Math.max(0, ...rows.map((row) => row.concentration)),
+        upTo: Math.max(0, ...rows.flatMap((row) => (row.absorbances.length > 0 ? row.concentration : []))),
         unit: 'mg/L',
         colours,
       }),

@@ -45,7 +45,7 @@ export function CertifiedResults({ snapshot }: { snapshot: CertificateSnapshot }
       title: 'U, k = 2',
       kind: 'number',
       onPhone: 'beside',
-      text: (line) => line.uncertaintyText || null,
+      text: (line) => (line.uncertaintyText === '' ? null : `± ${line.uncertaintyText.replace(/^±\s*/, '')}`),
     },
     { key: 'unit', title: 'Unit', isNarrow: true, onPhone: 'beside', text: (line) => line.unit },
     {

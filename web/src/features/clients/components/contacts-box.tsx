@@ -9,7 +9,7 @@ import { Button, Checkbox, Form, Input } from 'antd'
 import { useState } from 'react'
 import { useCall, useCan, useNotice } from '../../../lib'
 import { useEndpointForm } from '../../../lib/use-endpoint-form'
-import { Bar, Box, DataTable, type Column } from '../../../ui'
+import { Bar, Box, DataTable, MailAddress, type Column } from '../../../ui'
 import { ReasonDialog } from '../../../ui/dialogs'
 import { DialogFoot, FormDialog } from '../../../ui/form-dialog'
 import { FormProblem } from '../../../ui/form-problem'
@@ -39,7 +39,7 @@ export function ContactsBox({ client }: { client: ClientView }) {
   })
   const columns: Column<Contact>[] = [
     { key: 'name', title: 'Name', text: (row) => row.name },
-    { key: 'email', title: 'E-mail', text: (row) => row.email },
+    { key: 'email', title: 'E-mail', cell: (row) => <MailAddress of={row.email} /> },
     { key: 'alerts', title: 'Gets alerts', cell: (row) => yesNo(row.getsAlerts) },
     { key: 'certificates', title: 'Gets certificates', cell: (row) => yesNo(row.getsCertificates) },
     {

@@ -2,23 +2,11 @@ import type { delivery } from '@weirlight/shared/contracts'
 import { STATE_MARKS } from '@weirlight/shared/states'
 import type { z } from 'zod'
 import { useLaboratoryTime } from '../../../lib'
-import { DataTable, StatusTag, type Column } from '../../../ui'
+import { DataTable, MailAddress, StatusTag, type Column } from '../../../ui'
 import './deliveries.css'
 
 /** as alerts and certificates give it */
 type Delivery = z.infer<typeof delivery>
-
-/** On a phone an address is broken behind the @, not within a name. */
-function Address({ of }: { of: string }) {
-  const [name = '', ...rest] = of.split('@')
-  if (rest.length === 0) return of
-  return (
-    <>
-      {name}@<wbr />
-      {rest.join('@')}
-    </>
-  )
-}
 
 interface DeliveriesTableProps {
   deliveries: readonly Delivery[]
@@ -34,12 +22,17 @@ export function DeliveriesTable({ deliveries, label }: DeliveriesTableProps) {
       title: 'To',
       cell: (row) => (
         <span className="delivery-to">
-          <Address of={row.to} />
+          <MailAddress of={row.to} />
           {row.lastError !== '' && <span className="delivery-error above">{row.lastError}</span>}
         </span>
       ),
     },
-    { key: 'state', title: 'State', cell: (row) => <StatusTag mark={STATE_MARKS.mail[row.state]} /> },
+    {
+      key: 'state',
+      title: 'State',
+      onPhone: 'corner',
+      cell: (row) => <StatusTag mark={STATE_MARKS.mail[row.state]} />,
+    },
     { key: 'sent', title: 'Sent', text: (row) => (row.sentAt ? at(row.sentAt) : '–') },
     {
       key: 'attempts',

@@ -5,7 +5,16 @@ import { STATE_MARKS } from '@weirlight/shared/states'
 import { Button } from 'antd'
 import { Link } from 'react-router-dom'
 import { pagesFor, paths, useCall, useCan, useFilters, useLaboratoryTime, useNotice } from '../../../lib'
-import { Clock, DataTable, FilterBar, FilterSelect, StatusTag, Strip, type Column } from '../../../ui'
+import {
+  Clock,
+  DataTable,
+  FilterBar,
+  FilterSelect,
+  MailAddress,
+  StatusTag,
+  Strip,
+  type Column,
+} from '../../../ui'
 
 type Message = ResponseOf<typeof listMail>['items'][number]
 
@@ -39,7 +48,7 @@ export function MailList() {
       onPhone: 'corner',
       cell: (row) => <StatusTag mark={STATE_MARKS.mail[row.state]} />,
     },
-    { key: 'to', title: 'To', text: (row) => row.to },
+    { key: 'to', title: 'To', cell: (row) => <MailAddress of={row.to} /> },
     {
       key: 'subject',
       title: 'Subject',

@@ -5,7 +5,12 @@ import { acceptanceRows, constantRows, thresholdWords, type FactRow } from '../m
 
 const FACT_COLUMNS: Column<FactRow>[] = [
   { key: 'what', title: 'What', text: (row) => row.what },
-  { key: 'value', title: 'Value', cell: (row) => <span className="strong">{row.value}</span> },
+  {
+    key: 'value',
+    title: 'Value',
+    onPhone: 'corner',
+    cell: (row) => <span className="strong">{row.value}</span>,
+  },
   { key: 'source', title: 'Source and how it is known', cell: (row) => <Provenance of={row} /> },
 ]
 

@@ -2,7 +2,16 @@ import { useQuery } from '@tanstack/react-query'
 import { ROLE_NAMES, ROLES } from '@weirlight/shared/permissions'
 import { STATE_MARKS } from '@weirlight/shared/states'
 import { asProblem, paths, useFilters } from '../../../lib'
-import { DataTable, Failed, FilterBar, FilterSelect, FilterText, Since, StatusTag } from '../../../ui'
+import {
+  DataTable,
+  Failed,
+  FilterBar,
+  FilterSelect,
+  FilterText,
+  MailAddress,
+  Since,
+  StatusTag,
+} from '../../../ui'
 import { usersQuery, type UserView } from '../api/user-queries'
 
 const STATES = (['active', 'invited', 'disabled'] as const).map((value) => ({
@@ -53,7 +62,7 @@ export function PeopleList() {
             onPhone: 'corner',
             cell: (row) => <StatusTag mark={STATE_MARKS.user[row.status]} />,
           },
-          { key: 'email', title: 'E-mail', text: (row) => row.email },
+          { key: 'email', title: 'E-mail', cell: (row) => <MailAddress of={row.email} /> },
           { key: 'client', title: 'Utility', text: (row) => row.clientName ?? '' },
           {
             key: 'seen',
