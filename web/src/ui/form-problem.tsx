@@ -17,15 +17,11 @@ export function FormProblem({ form }: { form: FormTrouble }) {
           isAlert
           action={problem?.code === 'stale' && <LoadAgain onLoaded={onLoadedAgain} />}
         >
-          {isPlaced
-            ? 'Please look at the marked fields.'
-            : (problem?.message ?? 'Please look at this first:')}
-          {problem?.conflict && (
-            <p>
-              Changed by {problem.conflict.changedBy}, {at(problem.conflict.changedAt)}. Load it again to see
-              it: what you entered stays, and the fields you left alone show what stands now.
-            </p>
-          )}
+          {problem?.conflict
+            ? `${problem.conflict.changedBy} changed this after you opened it, ${at(problem.conflict.changedAt)}. Load it again to see the change: what you entered stays, and the fields you left alone show what stands now.`
+            : isPlaced
+              ? 'Please look at the marked fields.'
+              : (problem?.message ?? 'Please look at this first:')}
           {homeless.length > 0 && (
             <ul>
               {homeless.map((sentence) => (
