@@ -16,6 +16,7 @@ export const todayLine = z.object({
     'batch',
     'person',
     'result',
+    'set-up',
   ]),
   /** the moment its clock runs to or since; the page says it in words */
   clock: z.object({ at: instant.nullable(), sense: z.enum(['due', 'since', 'none']), prefix: z.string() }),

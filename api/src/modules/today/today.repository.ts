@@ -256,6 +256,24 @@ export class TodayRepository {
       .execute()
   }
 
+  /** What a new laboratory does not have yet, and cannot work without. */
+  async missing(db: Executor) {
+    const row = await sql<
+      Record<
+        'technician' | 'manager' | 'client' | 'authorisation' | 'instrument' | 'lot' | 'calibration',
+        boolean
+      >
+    >`select
+      not exists (select from users where role = 'technician' and status <> 'disabled') as technician,
+      not exists (select from users where role = 'qa-manager' and status <> 'disabled') as manager,
+      not exists (select from clients) as client,
+      not exists (select from authorisations) as authorisation,
+      not exists (select from instruments) as instrument,
+      not exists (select from material_lots) as lot,
+      not exists (select from calibrations) as calibration`.execute(db)
+    return row.rows[0]
+  }
+
   async newCertificates(db: Executor, given: { clientId: string; userId: string }) {
     return db
       .selectFrom('certificates')

@@ -4,6 +4,7 @@ import { paths } from '@weirlight/shared/paths'
 import type { Actor } from '@weirlight/shared/permissions'
 import { Clock, Database, type AnswerOf } from '../../platform/index.js'
 import * as say from './house-lines.js'
+import { missingLines } from './missing-lines.js'
 import { TodayRepository } from './today.repository.js'
 
 const LINES_SHOWN = 40
@@ -70,6 +71,7 @@ export class TodayService {
           ...say.mailLines(await this.rows.failedMail(this.db.read)),
           ...say.unrenderedLines(await this.rows.unrendered(this.db.read, AHEAD.documentMinutes)),
           ...say.invitedLines(await this.rows.invited(this.db.read)),
+          ...missingLines(await this.rows.missing(this.db.read), 'people'),
         ]
       case 'auditor':
         return say.alertLines(await this.rows.unansweredAlerts(this.db.read, null), { now, to: paths.alert })
@@ -78,7 +80,7 @@ export class TodayService {
 
   private async benchLines(actor: Actor, now: Date): Promise<say.TodayLine[]> {
     const db = this.db.read
-    const [samples, holding, batches, own, ending, lots, checks] = await Promise.all([
+    const [samples, holding, batches, own, ending, lots, checks, missing] = await Promise.all([
       this.rows.samplesToAccept(db),
       this.rows.holdingSoon(db, AHEAD.holdingHours),
       this.rows.batches(db, ['open', 'returned']),
@@ -86,6 +88,7 @@ export class TodayService {
       this.rows.calibrationsEnding(db, AHEAD.calibrationDays),
       this.rows.lotsEnding(db, AHEAD.lotDays),
       this.rows.checksDue(db, AHEAD.checkDays),
+      this.rows.missing(db),
     ])
     return [
       ...say.acceptanceLines(samples),
@@ -95,12 +98,13 @@ export class TodayService {
       ...say.endingLines(ending, now),
       ...say.lotLines(lots, now),
       ...say.checkLines(checks, now),
+      ...missingLines(missing, 'bench'),
     ]
   }
 
   private async qaLines(actor: Actor, now: Date): Promise<say.TodayLine[]> {
     const db = this.db.read
-    const [review, hours, signing, alerts, answered, mail, unrendered] = await Promise.all([
+    const [review, hours, signing, alerts, answered, mail, unrendered, missing] = await Promise.all([
       this.rows.batches(db, ['submitted']),
       this.rows.reviewHours(db),
       this.rows.calibrations(db, ['submitted']),
@@ -108,6 +112,7 @@ export class TodayService {
       this.rows.answeredAlerts(db),
       this.rows.failedMail(db),
       this.rows.unrendered(db, AHEAD.documentMinutes),
+      this.rows.missing(db),
     ])
     return [
       ...say.reviewLines(review, { now, hours, userId: actor.userId }),
@@ -116,6 +121,7 @@ export class TodayService {
       ...say.answeredLines(answered),
       ...say.mailLines(mail),
       ...say.unrenderedLines(unrendered),
+      ...missingLines(missing, 'rules'),
     ]
   }
 
@@ -151,7 +157,9 @@ export class TodayService {
           mail.sent + left === 0
             ? 'No messages'
             : left === 0
-              ? `All ${mail.sent} messages left the house`
+              ? mail.sent === 1
+                ? 'The one message left the house'
+                : `All ${mail.sent} messages left the house`
               : `${mail.sent} left, ${mail.waiting} waiting, ${mail.failed} not delivered`,
       },
       ...(seal
