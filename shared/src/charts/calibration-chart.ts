@@ -129,7 +129,9 @@ export function residualsChart(input: ResidualsChartInput): EChartsOption {
   const { points, colours } = input
   if (points.length === 0) return emptyChart('Residuals appear with the curve.', colours)
   const milli = points.map((point) => ({ x: point.concentration, y: point.residual * 1000 }))
-  const far = Math.max(...milli.map((point) => Math.abs(point.y)))
+  const farthest = Math.max(...milli.map((point) => Math.abs(point.y)))
+  // points on the line leave only the dust of binary arithmetic: drawn as what it is, nothing
+  const far = farthest < 1e-6 ? 0.1 : farthest
   const y = roundAxis([-far, 0, far], 4)
   const look = axisLook(colours)
   return {

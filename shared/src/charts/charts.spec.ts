@@ -232,6 +232,18 @@ describe('axis labels', () => {
   })
 })
 
+describe('residuals of points that lie on the line', () => {
+  it('stand on nothing, not on the dust of binary arithmetic', () => {
+    const points = [
+      { concentration: 0, residual: 1e-17 },
+      { concentration: 1, residual: -2e-17 },
+    ]
+    const svg = draw(residualsChart({ points, unit: 'mg/L', colours }))
+    expect(texts(svg)).toContain('0.1')
+    expect(texts(svg).every((text) => (text?.length ?? 0) <= 'residual, mA'.length)).toBe(true)
+  })
+})
+
 describe('axis ends', () => {
   it.each([
     [[0, 0.83], { min: 0, max: 1, interval: 0.2 }],

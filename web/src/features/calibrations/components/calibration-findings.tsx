@@ -2,7 +2,7 @@ import type { Criterion, MethodDefinition } from '@weirlight/shared/contracts'
 import type { StoredFit } from '@weirlight/shared/worksheet'
 import { Box, Criteria, KeyValues, StatusTag } from '../../../ui'
 import type { DraftAssessment } from '../draft/calibration-draft'
-import { decimals, significant, thousands, withError } from '../draft/number-texts'
+import { decimals, isDust, significant, thousands, withError } from '../draft/number-texts'
 import './calibrations.css'
 
 interface FindingsProps {
@@ -73,7 +73,9 @@ function LineBox({ stored }: { stored: StoredFit }) {
             term: 'Residual sd, A',
             detail: (
               <span title={`${stored.residualStandardDeviation}`}>
-                {significant(stored.residualStandardDeviation, 3)}
+                {isDust(stored.residualStandardDeviation)
+                  ? 'none: every point lies on it'
+                  : significant(stored.residualStandardDeviation, 3)}
               </span>
             ),
           },
@@ -81,17 +83,11 @@ function LineBox({ stored }: { stored: StoredFit }) {
           { term: 'r²', detail: decimals(stored.rSquared, 6) },
           {
             term: 'Detection limit',
-            detail:
-              stored.detectionLimit === null
-                ? 'not calculable'
-                : `${significant(stored.detectionLimit, 2)} mg/L`,
+            detail: limitText(stored.detectionLimit),
           },
           {
             term: 'Quantification limit',
-            detail:
-              stored.quantificationLimit === null
-                ? 'not calculable'
-                : `${significant(stored.quantificationLimit, 2)} mg/L`,
+            detail: limitText(stored.quantificationLimit),
           },
         ]}
       />
@@ -99,6 +95,10 @@ function LineBox({ stored }: { stored: StoredFit }) {
     </Box>
   )
 }
+
+/** Without scatter there is nothing to find a limit from. */
+const limitText = (limit: number | null) =>
+  limit === null || isDust(limit) ? 'not calculable' : `${significant(limit, 2)} mg/L`
 
 /** A value with its standard error; both unrounded when pointed at. */
 function Exact({ value, error }: { value: number; error: number }) {

@@ -14,9 +14,13 @@ export function decimals(value: number | null | undefined, digits: number): stri
 export const trueMinus = (text: string) => text.replace(/^-/, '−')
 const decimalsIn = (text: string) => /\.(\d+)$/.exec(text)?.[1]?.length ?? 0
 
+/** Readings have four or five decimals: what is smaller than this is the dust of binary arithmetic, not scatter. */
+const DUST = 1e-9
+export const isDust = (value: number): boolean => Math.abs(value) < DUST
+
 /** `0.19698 ± 0.00025`: the error to two digits, the value to the same place */
 export function withError(value: number, error: number): string {
-  if (!(error > 0)) return trueMinus(significant(value, 5))
+  if (!(error > 0) || isDust(error)) return trueMinus(significant(value, 5))
   const errorText = significant(error, 2)
   return `${trueMinus(decimals(value, Math.min(15, decimalsIn(errorText))))} ± ${errorText}`
 }
