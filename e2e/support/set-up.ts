@@ -102,6 +102,19 @@ export async function openedBatch(
   })
 }
 
+/** A well whose iron no other test counts. */
+export const ironPoint = { client: 'AV', point: 'AV-05', method: 'fe-phenanthroline' }
+
+/** An open batch of one new sample of that well. */
+export const openedIronBatch = async (api: Api): Promise<BatchView> =>
+  openedBatch(api, { method: ironPoint.method, samples: [await acceptedSample(api, ironPoint)] })
+
+/** What the server holds of the batch's readings, in order of size as text. */
+export async function savedAbsorbances(api: Api, id: string): Promise<string[]> {
+  const { rows } = await api.call(getBatch, { params: { id } })
+  return rows.flatMap((row) => row.readings.map((reading) => reading.absorbance)).toSorted()
+}
+
 /** Its readings, as its own calibration gives them for these concentrations (mg/L by sample number). */
 export async function readBatch(
   api: Api,
