@@ -61,6 +61,12 @@ export class DemoWorld {
     return [...this.people.values()].filter((one) => one.role === role)
   }
 
+  first(role: Actor['role']): Actor {
+    const [found] = this.ofRole(role)
+    if (!found) throw new Error(`The demonstration has no ${role} yet.`)
+    return found
+  }
+
   passphraseOf(actor: Actor): string {
     const email = [...this.people].find(([, one]) => one.userId === actor.userId)?.[0] ?? ''
     return this.passphrases.get(email) ?? ''

@@ -1,52 +1,44 @@
-import { expectedSlope } from '@weirlight/shared/assay'
 import type { Role } from '@weirlight/shared/permissions'
 import { ClientsService, ContactsService } from '../modules/clients/index.js'
 import { InstrumentsService } from '../modules/instruments/index.js'
 import { LaboratoryService } from '../modules/laboratory/index.js'
-import { MaterialsService } from '../modules/materials/index.js'
-import { MethodsService } from '../modules/methods/index.js'
 import { ProgrammesService } from '../modules/programmes/index.js'
 import { FirstAdministratorService, InvitationsService, UsersService } from '../modules/users/index.js'
 import { Database, SYSTEM } from '../platform/index.js'
-import type { DemoMethod, DemoWorld } from './demo-world.js'
+import type { DemoWorld } from './demo-world.js'
 import { newPassphrase } from './passphrase.js'
+import { stockTheShelves } from './stock-the-shelves.js'
 
-const PLANS = [
+/** What an instrument is held against before it measures: `spread` is the standard deviation of what it shows, `digits` how it shows it. */
+const CHECKS = [
   {
-    code: 'fe-phenanthroline',
-    analyte: 'Fe',
-    cellPathCm: '1',
-    standards: ['0', '0.05', '0.1', '0.5', '1', '2', '4'],
-    instrument: 1,
-    reagents: ['1,10-phenanthroline solution', 'Acetate buffer', 'Hydroxylamine solution'],
+    kind: 'wavelength',
+    reference: 'Holmium oxide solution, 536.5 nm band',
+    nominal: '536.5',
+    tolerance: '1.0',
+    unit: 'nm',
+    spread: 0.15,
+    digits: 1,
   },
   {
-    code: 'cu-bathocuproine',
-    analyte: 'Cu',
-    cellPathCm: '1',
-    standards: ['0', '0.05', '0.1', '0.5', '1', '2', '4'],
-    instrument: 1,
-    reagents: ['Bathocuproine disulfonate solution', 'Citrate buffer', 'Hydroxylamine solution'],
+    kind: 'photometric',
+    reference: 'Neutral filter set 4',
+    nominal: '0.500',
+    tolerance: '0.005',
+    unit: 'A',
+    spread: 0.001,
+    digits: 3,
   },
   {
-    code: 'mn-persulfate',
-    analyte: 'Mn',
-    cellPathCm: '5',
-    standards: ['0', '0.025', '0.05', '0.1', '0.5', '1', '2'],
-    instrument: 0,
-    reagents: ['Silver and mercury reagent', 'Ammonium persulfate'],
-  },
-  {
-    code: 'cr6-diphenylcarbazide',
-    analyte: 'Cr',
-    cellPathCm: '1',
-    standards: ['0', '0.01', '0.02', '0.1', '0.25', '0.5', '1'],
-    instrument: 0,
-    reagents: ['1,5-diphenylcarbazide in acetone', 'Sulfuric acid, 1 + 9'],
+    kind: 'baseline',
+    reference: 'Water against water, ten minutes',
+    nominal: '0.000',
+    tolerance: '0.002',
+    unit: 'A',
+    spread: 0.0004,
+    digits: 4,
   },
 ] as const
-
-const NAMES = { Fe: 'Iron', Cu: 'Copper', Mn: 'Manganese', Cr: 'Chromium(VI)' } as const
 
 /** Days before the first week: people, clients, instruments and the first lots. */
 export async function foundLaboratory(
@@ -85,8 +77,7 @@ async function invite(
   world: DemoWorld,
   given: { email: string; name: string; role: Role; clientId: string | null },
 ): Promise<void> {
-  const [administrator] = world.ofRole('administrator')
-  if (!administrator) throw new Error('Nobody can invite.')
+  const administrator = world.first('administrator')
   const { link } = await world
     .service(Database)
     .transaction(administrator, 'user.invite', null, (trx) =>
@@ -115,8 +106,7 @@ async function accept(
 }
 
 async function registerClients(world: DemoWorld): Promise<void> {
-  const [manager] = world.ofRole('qa-manager')
-  if (!manager) throw new Error('The demonstration needs a QA manager.')
+  const manager = world.first('qa-manager')
   const programmes = (await world.service(ProgrammesService).list()).items
   for (const client of world.data.clients) {
     const programme = programmes.find((one) => one.code === client.programme)
@@ -140,181 +130,26 @@ async function registerClients(world: DemoWorld): Promise<void> {
 }
 
 async function setUpInstruments(world: DemoWorld, days: { expires: string }): Promise<string[]> {
-  const [technician] = world.ofRole('technician')
-  if (!technician) throw new Error('The demonstration needs a technician.')
+  const technician = world.first('technician')
   const service = world.service(InstrumentsService)
   const ids: string[] = []
   for (const instrument of world.data.instruments) {
     const { id } = await service.add(technician, instrument)
     ids.push(id)
-    const nextDueOn = days.expires
-    await service.recordCheck(technician, id, {
-      kind: 'wavelength',
-      reference: 'Holmium oxide solution, 536.5 nm band',
-      nominal: '536.5',
-      found: (536.5 + world.chance.normal(0.15)).toFixed(1),
-      tolerance: '1.0',
-      unit: 'nm',
-      nextDueOn,
-      note: '',
-    })
-    await service.recordCheck(technician, id, {
-      kind: 'photometric',
-      reference: 'Neutral filter set 4',
-      nominal: '0.500',
-      found: (0.5 + world.chance.normal(0.001)).toFixed(3),
-      tolerance: '0.005',
-      unit: 'A',
-      nextDueOn,
-      note: '',
-    })
-    await service.recordCheck(technician, id, {
-      kind: 'baseline',
-      reference: 'Water against water, ten minutes',
-      nominal: '0.000',
-      found: world.chance.normal(0.0004).toFixed(4),
-      tolerance: '0.002',
-      unit: 'A',
-      nextDueOn,
-      note: '',
-    })
+    for (const { spread, digits, ...check } of CHECKS) {
+      await service.recordCheck(technician, id, {
+        ...check,
+        found: (Number(check.nominal) + world.chance.normal(spread)).toFixed(digits),
+        nextDueOn: days.expires,
+        note: '',
+      })
+    }
   }
   return ids
 }
 
-async function stockTheShelves(
-  world: DemoWorld,
-  days: { founded: string; expires: string; instruments: string[] },
-): Promise<void> {
-  const [technician] = world.ofRole('technician')
-  if (!technician) throw new Error('The demonstration needs a technician.')
-  const lots = world.service(MaterialsService)
-  const methods = (await world.service(MethodsService).list()).items
-  const received = {
-    receivedOn: days.founded,
-    openedOn: days.founded,
-    expiresOn: days.expires,
-    storage: 'Cabinet 2, 20 °C',
-  }
-  for (const plan of PLANS) {
-    const row = methods.find((one) => one.code === plan.code)
-    const instrumentId = days.instruments[plan.instrument]
-    if (!row || !instrumentId) throw new Error(`There is no method ${plan.code}.`)
-    const { definition } = await world.service(MethodsService).get(world.service(Database).read, row.id)
-    const name = NAMES[plan.analyte]
-    const hazards =
-      plan.analyte === 'Cr'
-        ? 'Hexavalent chromium: carcinogenic. Gloves, no skin contact, chromium waste.'
-        : 'Acidic. Gloves and eye protection.'
-    const standard = (given: {
-      kind: 'stock' | 'working-standard' | 'second-source' | 'control'
-      label: string
-      concentration: string
-      uncertainty: string
-      lotCode: string
-      producer: string
-      parentId: string | null
-      recipe: string
-    }) =>
-      lots.add(technician, {
-        ...received,
-        kind: given.kind,
-        name: given.label,
-        analyte: plan.analyte,
-        concentration: given.concentration,
-        uncertainty: given.uncertainty,
-        lotCode: given.lotCode,
-        producer: given.producer,
-        certificateRef: given.parentId ? '' : `MF-CRM-${given.lotCode}`,
-        parentId: given.parentId,
-        recipe: given.recipe,
-        hazards,
-      })
-    const stock = await standard({
-      kind: 'stock',
-      label: `${name} stock standard`,
-      concentration: '1000',
-      uncertainty: '3',
-      lotCode: `${plan.analyte}-118`,
-      producer: 'Northmere Reference Materials (invented)',
-      parentId: null,
-      recipe: '',
-    })
-    const working = await standard({
-      kind: 'working-standard',
-      label: `${name} working standard`,
-      concentration: '100',
-      uncertainty: '0.5',
-      lotCode: `${plan.analyte}-118-1`,
-      producer: world.data.laboratory.name,
-      parentId: stock.id,
-      recipe: '10.00 mL of the stock to 100 mL in 1 % nitric acid, class A pipette P-04 and flask F-11.',
-    })
-    const second = await standard({
-      kind: 'second-source',
-      label: `${name} second source`,
-      concentration: '1000',
-      uncertainty: '4',
-      lotCode: `${plan.analyte}-702`,
-      producer: 'Calder Standards Works (invented)',
-      parentId: null,
-      recipe: '',
-    })
-    const control = await standard({
-      kind: 'control',
-      label: `${name} control material`,
-      concentration: '100',
-      uncertainty: '0.8',
-      lotCode: `${plan.analyte}-C31`,
-      producer: 'Calder Standards Works (invented)',
-      parentId: second.id,
-      recipe: '10.00 mL of the second source to 100 mL.',
-    })
-    const reagentIds: string[] = []
-    for (const reagent of plan.reagents) {
-      const lot = await lots.add(technician, {
-        ...received,
-        kind: 'reagent',
-        name: reagent,
-        analyte: null,
-        concentration: null,
-        uncertainty: null,
-        lotCode: `MF-${world.chance.whole(100, 999)}`,
-        producer: world.data.laboratory.name,
-        certificateRef: '',
-        parentId: null,
-        recipe: 'As the method says; water from the still, conductivity below 1 µS/cm.',
-        hazards: definition.cautions[0]?.text ?? '',
-      })
-      reagentIds.push(lot.id)
-    }
-    const whole = definition as DemoMethod['definition']
-    const slope = expectedSlope({
-      molarAbsorptivity: whole.molarAbsorptivity.value,
-      molarMass: whole.molarMass,
-      pathLengthCm: Number(plan.cellPathCm),
-    })
-    world.methods.push({
-      id: row.id,
-      analyte: plan.analyte,
-      title: row.title,
-      definition: whole,
-      cellPathCm: plan.cellPathCm,
-      standards: plan.standards,
-      instrumentId,
-      stockId: stock.id,
-      workingId: working.id,
-      secondSourceId: second.id,
-      controlId: control.id,
-      reagentIds,
-      slope: slope * 0.985,
-    })
-  }
-}
-
 async function authorise(world: DemoWorld, days: { founded: string; expires: string }): Promise<void> {
-  const [administrator] = world.ofRole('administrator')
-  if (!administrator) throw new Error('Nobody can authorise.')
+  const administrator = world.first('administrator')
   const given = { validFrom: days.founded, validUntil: days.expires }
   for (const method of world.methods) {
     for (const technician of world.ofRole('technician')) {
