@@ -199,6 +199,7 @@ export async function findThings(given: { house: Api; own: Api }): Promise<Thing
   const batch = await first(house.call(listBatches, {}))
   const inState = (state: 'draft' | 'submitted' | 'in-force') =>
     first(house.call(listCalibrations, { query: { state } }), calibration)
+  const submitted = house.call(listCalibrations, { query: { state: 'submitted' } })
   const batchIn = (state: 'open' | 'submitted' | 'released') =>
     first(house.call(listBatches, { query: { state } }), batch)
   const sample = await first(house.call(listSamples, { query: { state: 'reported' } }))
@@ -211,7 +212,8 @@ export async function findThings(given: { house: Api; own: Api }): Promise<Thing
     instrument: await first(house.call(listInstruments, {})),
     client: await first(house.call(listClients, {})),
     draft: await inState('draft'),
-    submittedCalibration: await inState('submitted'),
+    // the demonstration's own, the oldest: what tests submit may be the manager's, who cannot sign it
+    submittedCalibration: (await submitted).items.at(-1)?.id ?? calibration,
     calibrationInForce: await inState('in-force'),
     openBatch: await batchIn('open'),
     submittedBatch: await batchIn('submitted'),

@@ -26,6 +26,12 @@ import { ChoiceSelect } from './choice-select'
 
 const SUBSCRIPTS = ['A₁', 'A₂', 'A₃', 'A₄', 'A₅'] as const
 
+/** What a row without a lot is made from. */
+function noLotWords({ role, concentration }: DraftStandard): string {
+  if (role === 'second-source') return 'Choose the lot'
+  return concentration !== '' && Number(concentration) === 0 ? 'reagent water' : 'the stock'
+}
+
 export interface StandardsGridProps {
   /** as committed */
   base: CalibrationDraft
@@ -217,7 +223,7 @@ function useColumns(props: StandardsGridProps): RunGridColumn<DraftStandard>[] {
           label={`Lot, ${row.role === 'second-source' ? 'second source' : `standard ${row.concentration}`}`}
           value={row.lotId}
           choices={lots[row.role]}
-          none={row.role === 'second-source' ? 'Choose the lot' : 'the stock'}
+          none={noLotWords(row)}
           onChange={(lotId) => setRow(row.key, { lotId })}
         />
       ),
