@@ -20,7 +20,7 @@ const alert = {
 describe('trendOfAlert', () => {
   const trend = trendOfAlert(alert)
   it('puts the limit into the unit of the result', () => {
-    expect(trend.limit).toEqual({ name: 'Secondary level', value: 0.05 })
+    expect(trend.limit).toEqual({ name: 'Secondary level', value: 0.05, text: '0.050' })
   })
   it('draws earlier and this one in time, a non-detect at the number behind its “<”', () => {
     expect(trend.points.map((point) => [point.text, point.value, point.nonDetect])).toEqual([

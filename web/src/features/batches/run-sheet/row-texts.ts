@@ -1,6 +1,7 @@
 import { convertUnit, roundReported } from '@weirlight/shared/assay'
 import type { Assessment, PositionView } from '@weirlight/shared/contracts'
 import { STATE_MARKS, type StateMark } from '@weirlight/shared/states'
+import { trueMinus } from '../../../lib/true-minus'
 
 export const UNIT_WORDS = { 'mg/L': 'mg/L', 'ug/L': 'µg/L' } as const
 export const KIND_WORDS: Record<PositionView['kind'], string> = {
@@ -32,7 +33,6 @@ export function flagWords(row: Assessed, found: Assessment): string[] {
     .map((flag) => FLAG_WORDS[flag] ?? flag)
 }
 
-const minus = (text: string) => text.replace(/^-/, '−')
 const decimalsIn = (text: string) => /\.(\d+)/.exec(text)?.[1]?.length ?? 0
 
 /**
@@ -46,7 +46,7 @@ export function shownNumbers(
   if (found.concentration === null) return { concentration: '', uncertainty: '' }
   if (row.kind === 'sample') {
     return {
-      concentration: minus(found.reportedText ?? ''),
+      concentration: trueMinus(found.reportedText ?? ''),
       uncertainty: found.uncertaintyText ? `± ${found.uncertaintyText.replace(/^±\s*/, '')}` : '',
     }
   }
@@ -62,7 +62,7 @@ export function shownNumbers(
     digits: Math.min(15, decimalsIn(uncertainty)),
     ties: 'half-even',
   })
-  return { concentration: minus(concentration), uncertainty: `± ${uncertainty}` }
+  return { concentration: trueMinus(concentration), uncertainty: `± ${uncertainty}` }
 }
 
 /** The unit a whole column can carry in its head; null where clients are reported in different units. */

@@ -1,5 +1,6 @@
 import type { Criterion, MethodDefinition } from '@weirlight/shared/contracts'
 import type { StoredFit } from '@weirlight/shared/worksheet'
+import { trueMinus } from '../../../lib'
 import { Box, Criteria, KeyValues, StatusTag } from '../../../ui'
 import type { DraftAssessment } from '../draft/calibration-draft'
 import { decimals, isDust, significant, thousands, withError } from '../draft/number-texts'
@@ -50,7 +51,9 @@ export function CalibrationFindings({ stored, criteria, diagnosis, refusal, defi
         )}
       </Box>
       <Box title="Criteria of the method">
-        <Criteria items={criteria} />
+        <Criteria
+          items={criteria.map((criterion) => ({ ...criterion, found: trueMinus(criterion.found) }))}
+        />
       </Box>
     </>
   )

@@ -1,7 +1,7 @@
 import type { MethodDefinition } from '@weirlight/shared/contracts'
 import { Dropdown } from 'antd'
 import { useMemo, useRef, useState } from 'react'
-import { useLaboratoryTime } from '../../../lib'
+import { trueMinus, useLaboratoryTime } from '../../../lib'
 import { KeyHints } from '../../../ui'
 import { RunGrid, type CellChange, type CellState, type RunGridColumn } from '../../../ui/run-grid'
 import { Tint } from '../../../ui/tint'
@@ -20,7 +20,7 @@ import {
   type DraftStandard,
 } from '../draft/calibration-draft'
 import { lotChoices } from '../draft/lots'
-import { decimals, signedPercent, trueMinus } from '../draft/number-texts'
+import { decimals, signedPercent } from '../draft/number-texts'
 import { ChangeReason } from './change-reason'
 import { ChoiceSelect } from './choice-select'
 

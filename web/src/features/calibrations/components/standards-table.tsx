@@ -1,9 +1,9 @@
 import type { CalibrationView, MethodDefinition } from '@weirlight/shared/contracts'
-import { useLaboratoryTime } from '../../../lib'
+import { trueMinus, useLaboratoryTime } from '../../../lib'
 import { DataTable, type Column } from '../../../ui'
 import { Tint } from '../../../ui/tint'
 import { serverKey, type DraftAssessment } from '../draft/calibration-draft'
-import { decimals, signedPercent, trueMinus } from '../draft/number-texts'
+import { decimals, signedPercent } from '../draft/number-texts'
 
 type Standard = CalibrationView['standards'][number]
 

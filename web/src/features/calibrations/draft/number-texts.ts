@@ -1,4 +1,5 @@
 import { roundReported } from '@weirlight/shared/assay'
+import { trueMinus } from '../../../lib/true-minus'
 
 /** so many significant digits, trailing zeros kept */
 export function significant(value: number | null | undefined, digits: number): string {
@@ -11,7 +12,6 @@ export function decimals(value: number | null | undefined, digits: number): stri
   return roundReported(value, { to: 'decimals', digits, ties: 'half-even' })
 }
 
-export const trueMinus = (text: string) => text.replace(/^-/, '−')
 const decimalsIn = (text: string) => /\.(\d+)$/.exec(text)?.[1]?.length ?? 0
 
 /** Readings have four or five decimals: what is smaller than this is the dust of binary arithmetic, not scatter. */
