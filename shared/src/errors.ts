@@ -28,6 +28,8 @@ export type ProblemCode =
   | 'not-allowed-now'
   | 'own-work'
   | 'wrong-passphrase'
+  | 'second-factor-needed'
+  | 'wrong-code'
   | 'throttled'
   | 'already-exists'
   | 'upload-too-large'
@@ -45,6 +47,8 @@ export const PROBLEM_STATUS: Record<ProblemCode, number> = {
   'not-allowed-now': 409,
   'own-work': 403,
   'wrong-passphrase': 403,
+  'second-factor-needed': 403,
+  'wrong-code': 403,
   throttled: 429,
   'already-exists': 409,
   'upload-too-large': 413,

@@ -35,7 +35,7 @@ export { MailService, type Attachment, type MailToQueue } from './mail/mail.serv
 export type { SealRow } from './seals/seals.repository.js'
 export { SealsService, type SealCheck } from './seals/seals.service.js'
 export { IDLE_MINUTES, SessionService } from './sessions/session.service.js'
-export { SignInThrottle } from './sessions/sign-in-throttle.js'
+export { SignInThrottle, type Try } from './sessions/sign-in-throttle.js'
 export { toCsv, toCsvStream, type CellValue } from './sheets/csv-writing.js'
 export { findColumns, plainName, type ColumnProblem, type NamedColumn } from './sheets/named-columns.js'
 export type { Sheet, SheetRow } from './sheets/sheet.js'

@@ -13,6 +13,7 @@ import { portalEndpoints } from './portal.js'
 import { qualityEndpoints } from './quality.js'
 import { resultEndpoints } from './results.js'
 import { sampleEndpoints } from './samples.js'
+import { secondFactorEndpoints } from './second-factor.js'
 import { sessionEndpoints } from './session.js'
 import { todayEndpoints } from './today.js'
 import { userEndpoints } from './users.js'
@@ -36,6 +37,7 @@ export type * from './reference.js'
 export * from './reference.js'
 export * from './results.js'
 export * from './samples.js'
+export * from './second-factor.js'
 export * from './session.js'
 export * from './today.js'
 export * from './users.js'
@@ -44,6 +46,7 @@ export * from './users.js'
 export const endpoints: readonly Endpoint[] = [
   ...healthEndpoints,
   ...sessionEndpoints,
+  ...secondFactorEndpoints,
   ...userEndpoints,
   ...laboratoryEndpoints,
   ...clientEndpoints,

@@ -1,6 +1,6 @@
 import { z } from 'zod'
 import { ROLES } from '../permissions/index.js'
-import { email, id, instant, name, newPassphrase, passphrase } from './common.js'
+import { email, id, instant, name, newPassphrase, passphrase, signInCode } from './common.js'
 import { defineEndpoint } from './endpoint.js'
 
 export const sessionView = z.object({
@@ -22,11 +22,11 @@ export type SessionView = z.infer<typeof sessionView>
 
 export const signIn = defineEndpoint({
   name: 'signIn',
-  summary: 'Sign in with e-mail and passphrase',
+  summary: 'Sign in with e-mail and passphrase, and with a code where the account has a second factor',
   method: 'POST',
   path: '/session',
   permission: 'public',
-  body: z.object({ email, password: passphrase }),
+  body: z.object({ email, password: passphrase, code: signInCode.optional() }),
   response: sessionView,
 })
 export const getSession = defineEndpoint({

@@ -34,6 +34,8 @@ export const userView = z.object({
   status: z.enum(['invited', 'active', 'disabled']),
   createdAt: instant,
   lastSignedInAt: instant.nullable(),
+  /** null: the passphrase alone signs this person in */
+  secondFactorSince: instant.nullable(),
   authorisations: z.array(authorisation),
   version,
 })
@@ -107,6 +109,16 @@ export const startPassphraseReset = defineEndpoint({
   body: versionedReason,
   response: userView,
 })
+export const takeOffSecondFactor = defineEndpoint({
+  name: 'takeOffSecondFactor',
+  summary: 'Take off the second factor of a person who has lost it',
+  method: 'POST',
+  path: '/users/:id/take-off-second-factor',
+  permission: 'users.manage',
+  params: idParams,
+  body: versionedReason,
+  response: userView,
+})
 export const disableUser = defineEndpoint({
   name: 'disableUser',
   summary: 'Disable an account and end its sessions',
@@ -154,6 +166,7 @@ export const userEndpoints = [
   inviteUserAgain,
   changeUser,
   startPassphraseReset,
+  takeOffSecondFactor,
   disableUser,
   enableUser,
   authoriseUser,

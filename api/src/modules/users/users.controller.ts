@@ -8,6 +8,7 @@ import {
   inviteUserAgain,
   listUsers,
   startPassphraseReset,
+  takeOffSecondFactor,
 } from '@weirlight/shared/contracts'
 import type { Actor } from '@weirlight/shared/permissions'
 import { CurrentActor, Endpoint, Input, type InputOf } from '../../platform/index.js'
@@ -40,6 +41,14 @@ export class UsersController {
   @Endpoint(startPassphraseReset)
   startReset(@CurrentActor() actor: Actor, @Input() { params, body }: InputOf<typeof startPassphraseReset>) {
     return this.users.startReset(actor, { ...params, ...body })
+  }
+
+  @Endpoint(takeOffSecondFactor)
+  takeOffSecondFactor(
+    @CurrentActor() actor: Actor,
+    @Input() { params, body }: InputOf<typeof takeOffSecondFactor>,
+  ) {
+    return this.users.takeOffSecondFactor(actor, { ...params, ...body })
   }
 
   @Endpoint(disableUser)

@@ -15,6 +15,7 @@ export interface UserRow {
   status: UserStatus
   createdAt: Date
   lastSignedInAt: Date | null
+  secondFactorSince: Date | null
   version: number
 }
 
@@ -25,10 +26,11 @@ export interface Credentials {
   clientId: string | null
   status: UserStatus
   passwordHash: string | null
+  hasSecondFactor: boolean
 }
 
 const columns = sql`u.id, u.email, u.name, u.role, u.client_id, c.name as client_name, u.status, u.created_at,
-  u.last_signed_in_at, u.version`
+  u.last_signed_in_at, u.second_factor_since, u.version`
 const source = sql`users u left join clients c on c.id = u.client_id`
 
 @Injectable()
@@ -61,7 +63,8 @@ export class UsersRepository {
 
   async findCredentials(db: Executor, email: string): Promise<Credentials | undefined> {
     const { rows } = await sql<Credentials>`
-      select id, name, role, client_id, status, password_hash from users where email = ${email}`.execute(db)
+      select id, name, role, client_id, status, password_hash, second_factor_since is not null as has_second_factor
+      from users where email = ${email}`.execute(db)
     return rows[0]
   }
 
@@ -114,6 +117,11 @@ export class UsersRepository {
 
   async activate(trx: Trx, id: string, row: { name: string; passwordHash: string }): Promise<void> {
     await sql`update users set name = ${row.name}, password_hash = ${row.passwordHash}, status = 'active',
+      version = version + 1 where id = ${id}`.execute(trx)
+  }
+
+  async updateSecondFactor(trx: Trx, id: string, { isOn }: { isOn: boolean }): Promise<void> {
+    await sql`update users set second_factor_since = case when ${isOn}::boolean then weirlight_now() end,
       version = version + 1 where id = ${id}`.execute(trx)
   }
 

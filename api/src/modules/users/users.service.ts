@@ -16,6 +16,7 @@ import {
 } from '../../platform/index.js'
 import { AuthorisationsRepository, type AuthorisationRow } from './authorisations.repository.js'
 import { LinksService } from './links.service.js'
+import { SecondFactorsService } from './second-factors.service.js'
 import { UsersRepository, type UserRow } from './users.repository.js'
 
 interface Move {
@@ -33,6 +34,7 @@ export class UsersService {
     private readonly authorisations: AuthorisationsRepository,
     private readonly links: LinksService,
     private readonly sessions: SessionService,
+    private readonly secondFactors: SecondFactorsService,
   ) {}
 
   async list(): Promise<{ items: UserView[] }> {
@@ -87,6 +89,18 @@ export class UsersService {
       const user = await this.lock(trx, id, version)
       if (user.status !== 'active') throw notAllowedNow('Only an active account can get a new passphrase.')
       await this.links.send(trx, { kind: 'reset', to: user, startedBy: actor.name })
+      return this.view(trx, id)
+    })
+  }
+
+  /** For a person who has lost the device: it may be in other hands, so the sessions end as well. */
+  async takeOffSecondFactor(actor: Actor, { id, version, reason }: Move): Promise<UserView> {
+    return this.db.transaction(actor, 'user.take-off-second-factor', reason, async (trx) => {
+      const user = await this.lock(trx, id, version)
+      if (id === actor.userId) throw notAllowedNow('Take off your own under Your account, with a code.')
+      if (!user.secondFactorSince) throw notAllowedNow('This person has no second factor.')
+      await this.secondFactors.takeOff(trx, user, { name: actor.name, reason })
+      await this.sessions.endAllOf(trx, id)
       return this.view(trx, id)
     })
   }
@@ -179,6 +193,7 @@ function toView(user: UserRow, authorisations: readonly AuthorisationRow[]): Use
     ...user,
     createdAt: user.createdAt.toISOString(),
     lastSignedInAt: user.lastSignedInAt?.toISOString() ?? null,
+    secondFactorSince: user.secondFactorSince?.toISOString() ?? null,
     authorisations: authorisations.map(({ userId: _, ...authorisation }) => authorisation),
   }
 }

@@ -525,6 +525,13 @@ export interface SamplingPoints {
   version: Generated<number>;
 }
 
+export interface SecondFactors {
+  lastStep: Generated<number>;
+  recoveryHashes: Generated<string[]>;
+  secret: Buffer;
+  userId: Int8;
+}
+
 export interface Sessions {
   expire: Timestamp;
   sess: Json;
@@ -574,6 +581,7 @@ export interface Users {
   name: string;
   passwordHash: string | null;
   role: string;
+  secondFactorSince: Timestamp | null;
   status: Generated<string>;
   version: Generated<number>;
 }
@@ -635,6 +643,7 @@ export interface DB {
   results: Results;
   samples: Samples;
   samplingPoints: SamplingPoints;
+  secondFactors: SecondFactors;
   sessions: Sessions;
   signatures: Signatures;
   signInAttempts: SignInAttempts;

@@ -55,6 +55,8 @@ export const PROBLEM_TITLES: Record<ProblemCode, string> = {
   'not-allowed-now': 'Not possible now',
   'own-work': 'Your own work',
   'wrong-passphrase': 'Wrong passphrase',
+  'second-factor-needed': 'A code is needed',
+  'wrong-code': 'Wrong code',
   throttled: 'Too many tries',
   'already-exists': 'Already there',
   'upload-too-large': 'File too large',

@@ -15,7 +15,7 @@ export class LoggingModule {
             forRoutes: ['{*path}'],
             pinoHttp: {
               level: settings.logLevel,
-              redact: ['password', 'passphrase', 'token', '*.password', '*.passphrase', '*.token'],
+              redact: ['password', 'passphrase', 'token', 'secret'].flatMap((name) => [name, `*.${name}`]),
               serializers: {
                 req: (request: { id: unknown; method: string; url: string }) => ({
                   id: request.id,

@@ -50,6 +50,11 @@ export class SignInThrottle {
       await this.attempts.insert(trx, { accountHash, address, succeeded: true })
     })
   }
+
+  /** Right so far, and more is asked for: neither a wrong try nor a success. */
+  async withdraw({ id }: Try): Promise<void> {
+    await this.db.unwatched((trx) => this.attempts.delete(trx, id))
+  }
 }
 
 function isOver(counts: Counts): boolean {
