@@ -4,7 +4,7 @@ export const house = {
   /** Features from low to high. A feature imports the face (index.ts) of a lower level: never sideways or up. */
   levels: [
     ['history', 'laboratory', 'mail', 'outgoing-mail', 'health', 'validation'],
-    ['users', 'session'],
+    ['users', 'session', 'second-factor'],
     ['clients', 'programmes', 'methods', 'materials', 'instruments'],
     ['samples', 'calibrations', 'bench'],
     ['batches'],

@@ -66,6 +66,7 @@ const ENTRIES: Record<Path, Entry | null> = {
   forgot: one('public', () => paths.forgot),
   reset: one('public', () => paths.reset('a-link-that-is-long-gone')),
   invitation: one('public', () => paths.invitation('a-link-that-is-long-gone')),
+  account: one('today.read', () => paths.account),
   check: one('public', () => paths.check),
   checkCode: one('public', ({ code }) => paths.checkCode(code)),
 
@@ -166,12 +167,12 @@ function everyScreen(things: Things): Screen[] {
 export const publicScreens = (things: Things): Screen[] =>
   everyScreen(things).filter(({ needs }) => needs === 'public')
 
-/** What a role can open. A client has its own pages for alerts and certificates. */
+/** What a role can open. A client has its own pages for alerts and certificates; its account is like everybody's. */
 export function screensOf(role: Role, things: Things): Screen[] {
   const actor = { userId: '0', role, clientId: role === 'client' ? '0' : null }
   return everyScreen(things).filter(({ path, needs }) => {
     if (needs === 'public' || !can(actor, needs)) return false
-    return role !== 'client' || path.startsWith(paths.portal)
+    return role !== 'client' || path.startsWith(paths.portal) || path === paths.account
   })
 }
 

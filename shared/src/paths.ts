@@ -6,6 +6,7 @@ export const paths = {
   forgot: '/forgot',
   reset: at('/reset'),
   invitation: at('/invitation'),
+  account: '/account',
   check: '/check',
   checkCode: at('/check'),
 

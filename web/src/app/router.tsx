@@ -1,4 +1,5 @@
 import { createBrowserRouter, type RouteObject } from 'react-router-dom'
+import { accountRoutes } from '../pages/account/routes'
 import { checkRoutes } from '../pages/check/routes'
 import { portalRoutes } from '../pages/portal/routes'
 import { todayRoutes } from '../pages/today/routes'
@@ -48,7 +49,7 @@ export function makeRouter() {
           children: [
             { index: true, Component: HomePage },
             { ErrorBoundary: PageFault, children: todayRoutes },
-            withKit([...AREAS.flatMap((area) => area.routes), ...portalRoutes]),
+            withKit([...AREAS.flatMap((area) => area.routes), ...portalRoutes, ...accountRoutes]),
             { path: '*', Component: NotFoundPage },
           ],
         },

@@ -1,4 +1,5 @@
 import { ROLE_NAMES } from '@weirlight/shared/permissions'
+import { Link } from 'react-router-dom'
 import { closeSession } from '../../features/session'
 import { paths } from '../../lib/paths'
 import { useSession } from '../../lib/session'
@@ -30,6 +31,9 @@ export function PersonMenu({ label }: { label?: string }) {
               {ROLE_NAMES[role]}, {laboratoryName}
             </span>
           </p>
+          <Link to={paths.account} onClick={() => setOpen(false)}>
+            Your account
+          </Link>
           <button type="button" onClick={() => void closeSession(paths.signIn)}>
             Sign out
           </button>

@@ -2,7 +2,14 @@ import { useQueryClient } from '@tanstack/react-query'
 import { signIn } from '@weirlight/shared/contracts'
 import { useState, type FormEvent } from 'react'
 import { Link, useNavigate, useSearchParams } from 'react-router-dom'
-import { openSession, refusalOf, slipsOf, type FieldErrors } from '../../features/session'
+import {
+  CodeField,
+  isCodeNeeded,
+  openSession,
+  refusalOf,
+  slipsOf,
+  type FieldErrors,
+} from '../../features/session'
 import { paths } from '../../lib/paths'
 import { Door, DoorField, formTexts } from '../../ui/door'
 import { Strip } from '../../ui/sheet'
@@ -18,11 +25,16 @@ export function SignInPage() {
   const [search] = useSearchParams()
   const [errors, setErrors] = useState<FieldErrors>({})
   const [isBusy, setBusy] = useState(false)
+  const [wantsCode, setWantsCode] = useState(false)
 
   const submit = async (event: FormEvent<HTMLFormElement>) => {
     const texts = formTexts(event)
     if (isBusy) return
-    const given = { email: texts['email'] ?? '', password: texts['password'] ?? '' }
+    const given = {
+      email: texts['email'] ?? '',
+      password: texts['password'] ?? '',
+      ...(wantsCode ? { code: texts['code'] ?? '' } : {}),
+    }
     const slips = slipsOf(signIn.body, given)
     if (slips) return setErrors(slips)
     setBusy(true)
@@ -31,7 +43,8 @@ export function SignInPage() {
       await openSession(client, given)
       await navigate(safeNext(search.get('next')), { replace: true })
     } catch (error) {
-      setErrors(refusalOf(error, ['email', 'password']))
+      if (!wantsCode && isCodeNeeded(error)) setWantsCode(true)
+      else setErrors(refusalOf(error, ['email', 'password', 'code']))
     } finally {
       setBusy(false)
     }
@@ -66,6 +79,7 @@ export function SignInPage() {
           required
           error={errors['password']}
         />
+        {wantsCode && <CodeField errors={errors} />}
         <button type="submit" className="button main" disabled={isBusy}>
           {isBusy ? 'Signing in…' : 'Sign in'}
         </button>

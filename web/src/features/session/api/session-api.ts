@@ -1,4 +1,4 @@
-import { getInvitation, signIn, signOut, type SessionView } from '@weirlight/shared/contracts'
+import { getInvitation, signIn, signOut, type BodyInput, type SessionView } from '@weirlight/shared/contracts'
 import type { QueryClient } from '@tanstack/react-query'
 import { call } from '../../../lib/call'
 import { queryFor } from '../../../lib/queries'
@@ -6,7 +6,7 @@ import { sessionQuery } from '../../../lib/session'
 
 export async function openSession(
   client: QueryClient,
-  given: { email: string; password: string },
+  given: BodyInput<typeof signIn>,
 ): Promise<SessionView> {
   const session = await call(signIn, { body: given })
   client.setQueryData(sessionQuery.queryKey, { session })

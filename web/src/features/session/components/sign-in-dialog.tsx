@@ -1,11 +1,13 @@
 import { useQueryClient } from '@tanstack/react-query'
+import { signIn } from '@weirlight/shared/contracts'
 import { useEffect, useRef, useState, type FormEvent } from 'react'
 import { paths } from '../../../lib/paths'
 import { gaveUpSignIn, signedInAgain } from '../../../lib/re-sign-in'
 import { DoorField, formTexts } from '../../../ui/door'
 import { Strip } from '../../../ui/sheet'
 import { openSession } from '../api/session-api'
-import { refusalOf, type FieldErrors } from './field-errors'
+import { CodeField, isCodeNeeded } from './code-field'
+import { refusalOf, slipsOf, type FieldErrors } from './field-errors'
 
 interface SignInDialogProps {
   email: string
@@ -18,6 +20,7 @@ export function SignInDialog({ email, name }: SignInDialogProps) {
   const dialog = useRef<HTMLDialogElement>(null)
   const [errors, setErrors] = useState<FieldErrors>({})
   const [isBusy, setBusy] = useState(false)
+  const [wantsCode, setWantsCode] = useState(false)
 
   useEffect(() => {
     const element = dialog.current
@@ -28,16 +31,23 @@ export function SignInDialog({ email, name }: SignInDialogProps) {
   }, [])
 
   const submit = async (event: FormEvent<HTMLFormElement>) => {
-    const password = formTexts(event)['password'] ?? ''
+    const texts = formTexts(event)
     if (isBusy) return
-    if (password === '') return setErrors({ password: 'Enter your passphrase.' })
+    const given = {
+      email,
+      password: texts['password'] ?? '',
+      ...(wantsCode ? { code: texts['code'] ?? '' } : {}),
+    }
+    const slips = slipsOf(signIn.body, given)
+    if (slips) return setErrors(slips)
     setBusy(true)
     setErrors({})
     try {
-      await openSession(client, { email, password })
+      await openSession(client, given)
       signedInAgain()
     } catch (error) {
-      setErrors(refusalOf(error, ['password']))
+      if (!wantsCode && isCodeNeeded(error)) setWantsCode(true)
+      else setErrors(refusalOf(error, ['password', 'code']))
     } finally {
       setBusy(false)
     }
@@ -73,6 +83,7 @@ export function SignInDialog({ email, name }: SignInDialogProps) {
           autoComplete="current-password"
           error={errors['password']}
         />
+        {wantsCode && <CodeField errors={errors} />}
         <div className="row">
           <button type="button" className="button" onClick={leave} disabled={isBusy}>
             Leave this page

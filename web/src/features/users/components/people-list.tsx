@@ -72,6 +72,12 @@ export function PeopleList() {
               row.lastSignedInAt ? <Since at={row.lastSignedInAt} /> : <span className="quiet">never</span>,
           },
           {
+            key: 'factor',
+            title: 'Second factor',
+            isSecondary: true,
+            text: (row) => (row.secondFactorSince ? 'yes' : 'no'),
+          },
+          {
             key: 'held',
             title: 'Authorisations',
             unit: 'in force',

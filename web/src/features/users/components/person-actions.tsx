@@ -1,4 +1,10 @@
-import { disableUser, enableUser, inviteUserAgain, startPassphraseReset } from '@weirlight/shared/contracts'
+import {
+  disableUser,
+  enableUser,
+  inviteUserAgain,
+  startPassphraseReset,
+  takeOffSecondFactor,
+} from '@weirlight/shared/contracts'
 import { Button } from 'antd'
 import { useState } from 'react'
 import { useCall, useCan, useNotice, useSession } from '../../../lib'
@@ -8,7 +14,7 @@ import { TOUCHES, type UserView } from '../api/user-queries'
 import { mayBeAuthorised } from '../user-words'
 import { AuthorisePerson, ChangePerson } from './person-forms'
 
-type Asked = 'change' | 'authorise' | 'disable' | 'enable' | 'reset' | 'invite'
+type Asked = 'change' | 'authorise' | 'disable' | 'enable' | 'reset' | 'invite' | 'second-factor'
 
 /** What an administrator may do with an account. */
 export function PersonActions({ person }: { person: UserView }) {
@@ -21,6 +27,7 @@ export function PersonActions({ person }: { person: UserView }) {
   const disable = useCall(disableUser, say(`${person.name} is disabled.`))
   const enable = useCall(enableUser, say(`${person.name} is enabled.`))
   const reset = useCall(startPassphraseReset, say(`A link is on its way to ${person.email}.`))
+  const takeOff = useCall(takeOffSecondFactor, say(`${person.name} has no second factor any more.`))
   const invite = useCall(inviteUserAgain, say(`The invitation for ${person.email} is on its way again.`))
   if (!may('users.manage')) return null
   const params = { id: person.id }
@@ -32,6 +39,9 @@ export function PersonActions({ person }: { person: UserView }) {
       {person.status === 'invited' && <Button onClick={() => setAsked('invite')}>Invite again</Button>}
       {person.status === 'active' && (
         <Button onClick={() => setAsked('reset')}>Send a new-passphrase link</Button>
+      )}
+      {person.secondFactorSince && !isMe && (
+        <Button onClick={() => setAsked('second-factor')}>Take off the second factor</Button>
       )}
       {person.status === 'disabled' ? (
         <Button onClick={() => setAsked('enable')}>Enable</Button>
@@ -70,6 +80,18 @@ export function PersonActions({ person }: { person: UserView }) {
         ]}
         actionLabel="Mail the link"
         onConfirm={(reason) => reset.mutateAsync({ params, body: { version, reason } })}
+      />
+      <ReasonDialog
+        isOpen={asked === 'second-factor'}
+        onClose={close}
+        title={`Take off the second factor of ${person.name}`}
+        consequences={[
+          'For somebody who has lost the device and the recovery codes. Make sure that it is they who ask.',
+          `The passphrase alone signs them in until they set up another. They are signed out everywhere, and ${person.email} is told, with your reason.`,
+        ]}
+        actionLabel="Take it off"
+        isDangerous
+        onConfirm={(reason) => takeOff.mutateAsync({ params, body: { version, reason } })}
       />
       <ReasonDialog
         isOpen={asked === 'disable'}

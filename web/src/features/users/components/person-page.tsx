@@ -41,6 +41,10 @@ function PersonPage({ person }: { person: UserView }) {
           term: 'Last signed in',
           detail: person.lastSignedInAt ? at(person.lastSignedInAt) : 'never',
         },
+        {
+          term: 'Second factor',
+          detail: person.secondFactorSince ? `since ${at(person.secondFactorSince)}` : 'none',
+        },
         may('history.read') && {
           term: 'History',
           detail: (

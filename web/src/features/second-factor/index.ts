@@ -1,0 +1,1 @@
+export { OwnSecondFactor } from './components/own-second-factor'
