@@ -3,7 +3,7 @@
 import { tmpdir } from 'node:os'
 import { mkdtempSync, rmSync } from 'node:fs'
 import { join } from 'node:path'
-import { ensureChromium } from './chromium.mjs'
+import { ensureTestBrowser } from './chromium.mjs'
 import { startControl } from './control.mjs'
 import { addCounts, lastLine, noCounts, oneCheck } from './counts.mjs'
 import { startProductOn, startThrowAwayCluster, undoStack } from './launch.mjs'
@@ -61,7 +61,7 @@ const runAll = async (suites) => {
 
 const failedSuite = (name, why) => ({ name, run: async () => ({ counts: oneCheck(1), output: `${why}\n` }) })
 
-/** The built product with its demo laboratory, or why there is none. */
+/** The built product with its demo laboratory and the hand that pulls its plugs, or why there is none. */
 const openProduct = async ({ home, cluster, watchdog }) => {
   try {
     const product = await startProductOn({
@@ -73,7 +73,9 @@ const openProduct = async ({ home, cluster, watchdog }) => {
       watchdog,
       onDeath: ({ name, lastLines }) => say(red(`${name} ended by itself:\n${lastLines}`)),
     })
-    return { product }
+    const control = await startControl(product)
+    undo.push(control.stop)
+    return { product, controlUrl: control.url }
   } catch (error) {
     const why = error instanceof Refusal ? error.message : (error.stack ?? String(error))
     return { why: `The product did not start.\n${why}` }
@@ -81,17 +83,13 @@ const openProduct = async ({ home, cluster, watchdog }) => {
 }
 
 /** The browser, and the checks of the database that it leaves behind. */
-const runOnProduct = async ({ product, why, wants, rest, folder, cluster, chromium }) => {
+const runOnProduct = async ({ product, controlUrl, why, wants, rest, folder, cluster, chromium }) => {
   if (!product) {
     if (wants('browser')) await runSuite(failedSuite('browser tests', why))
     if (wants('checks')) await runSuite(failedSuite('checks of the seeded database', 'Not run: see above.'))
     return
   }
-  if (wants('browser')) {
-    const control = await startControl(product)
-    undo.push(control.stop)
-    await runSuite(suiteGroups.browser({ folder, rest, product, controlUrl: control.url, chromium }))
-  }
+  if (wants('browser')) await runSuite(suiteGroups.browser({ folder, rest, product, controlUrl, chromium }))
   if (wants('checks')) await runSuite(suiteGroups.checks({ cluster, databaseName: product.databaseName }))
 }
 
@@ -111,24 +109,28 @@ const work = async () => {
   const needsProduct = wants('browser') || wants('checks')
   const needsCluster = wants('db') || needsProduct
   if (needsCluster) await ensurePostgres()
-  const chromium = wants('browser') ? await ensureChromium() : undefined
+  const chromium = wants('browser') ? await ensureTestBrowser() : undefined
 
   const parts = needsCluster ? await startThrowAwayCluster({ undo, watchdog }) : undefined
   const home = parts?.home ?? mkdtempSync(join(tmpdir(), 'weirlight-'))
   if (!parts) undo.push(() => rmSync(home, { recursive: true, force: true }))
   const folder = reportFolder(home)
 
-  // two lanes for two cores; the browser tests come after both, alone
+  // two lanes for two cores; the other browser tests come after both, alone
   const openWhatIsNeeded = async () => {
-    if (wants('db')) await runSuite(suiteGroups.database({ folder, rest, cluster: parts.cluster }))
     if (!wants('build') && !needsProduct) return undefined
     const isBuilt = await runSuite(suiteGroups.build)
     if (!needsProduct) return undefined
-    return isBuilt ? openProduct({ ...parts, watchdog }) : { why: 'Not run: the build failed.' }
+    const opened = isBuilt ? await openProduct({ ...parts, watchdog }) : { why: 'Not run: the build failed.' }
+    if (wants('browser') && opened.product) {
+      await runSuite(suiteGroups.outages({ ...opened, folder, rest, chromium }))
+    }
+    return opened
   }
   const [opened] = await Promise.all([
     openWhatIsNeeded(),
     runAll([
+      ...(wants('db') ? [suiteGroups.database({ folder, rest, cluster: parts?.cluster })] : []),
       ...(wants('lint') ? suiteGroups.lint : []),
       ...(wants('types') ? suiteGroups.types : []),
       ...(wants('small') ? suiteGroups.small({ folder, rest }) : []),

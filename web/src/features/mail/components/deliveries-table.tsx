@@ -39,7 +39,7 @@ export function DeliveriesTable({ deliveries, label }: DeliveriesTableProps) {
       title: 'Attempts',
       isNarrow: true,
       isSecondary: true,
-      text: (row) => String(row.attempts),
+      text: (row) => (row.attempts === 0 ? null : String(row.attempts)),
     },
   ]
   return (

@@ -59,7 +59,12 @@ export function MailList() {
         </div>
       ),
     },
-    { key: 'tries', title: 'Tries', kind: 'number', text: (row) => String(row.attempts) },
+    {
+      key: 'tries',
+      title: 'Tries',
+      kind: 'number',
+      text: (row) => (row.attempts === 0 ? null : String(row.attempts)),
+    },
     {
       key: 'sent',
       title: 'Left',
