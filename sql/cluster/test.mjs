@@ -127,13 +127,17 @@ const work = async () => {
     }
     return opened
   }
+  const openThenSmall = async () => {
+    const opened = await openWhatIsNeeded()
+    if (wants('small')) await runAll(suiteGroups.small({ folder, rest }))
+    return opened
+  }
   const [opened] = await Promise.all([
-    openWhatIsNeeded(),
+    openThenSmall(),
     runAll([
       ...(wants('db') ? [suiteGroups.database({ folder, rest, cluster: parts?.cluster })] : []),
       ...(wants('lint') ? suiteGroups.lint : []),
       ...(wants('types') ? suiteGroups.types : []),
-      ...(wants('small') ? suiteGroups.small({ folder, rest }) : []),
     ]),
   ])
   if (opened) await runOnProduct({ ...opened, ...parts, wants, rest, folder, chromium })
