@@ -125,6 +125,11 @@ export default tseslint.config(
     ],
     rules: { 'no-console': 'off' },
   },
+  // Playwright finds out what a fixture needs from its pattern, also where that is nothing.
+  {
+    files: ['e2e/support/**'],
+    rules: { 'no-empty-pattern': ['error', { allowObjectPatternsAsParameters: true }] },
+  },
   // Who reads these files demands a default export: configurations, threads of the worker pool, set-ups, types.
   {
     files: [...configurations, '**/*-worker.ts', '**/global-*.ts', '**/template-database.ts', '**/*.d.ts'],

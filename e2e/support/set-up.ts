@@ -13,6 +13,7 @@ import {
   saveReadings,
   submitBatch,
   type BatchView,
+  type BodyOf,
   type SampleView,
 } from '@weirlight/shared/contracts'
 import { randomUUID } from 'node:crypto'
@@ -40,30 +41,35 @@ export async function pointOf(api: Api, given: { client: string; point: string }
   return { clientId: client.id, pointId: point.id }
 }
 
-/** An accepted sample with one determination of iron. */
-export async function acceptedSample(
-  api: Api,
-  given: { client: string; point: string; method: string },
-): Promise<SampleView> {
-  const received = await api.call(receiveSample, {
-    body: {
-      ...(await pointOf(api, given)),
-      draftId: randomUUID(),
-      purpose: 'operational',
-      kind: 'routine',
-      collectedAt: hoursAgo(3).toISOString(),
-      collectedBy: 'Field round',
-      receivedAt: hoursAgo(1).toISOString(),
-      preservation: 'nitric-acid',
-      ph: '1.6',
-      temperatureC: '5.0',
-      container: 'plastic',
-      filteredInField: false,
-      condition: 'Intact',
-      remarks: '',
-      determinations: [{ methodId: await methodId(api, given.method) }],
-    },
-  })
+interface Wanted {
+  client: string
+  point: string
+  method: string
+}
+
+/** What the receiving form sends of an acidified bottle with one determination. */
+export async function receiptOf(api: Api, given: Wanted): Promise<BodyOf<typeof receiveSample>> {
+  return {
+    ...(await pointOf(api, given)),
+    draftId: randomUUID(),
+    purpose: 'operational',
+    kind: 'routine',
+    collectedAt: hoursAgo(3).toISOString(),
+    collectedBy: 'Field round',
+    receivedAt: hoursAgo(1).toISOString(),
+    preservation: 'nitric-acid',
+    ph: '1.6',
+    temperatureC: '5.0',
+    container: 'plastic',
+    filteredInField: false,
+    condition: 'Intact',
+    remarks: '',
+    determinations: [{ methodId: await methodId(api, given.method) }],
+  }
+}
+
+export async function acceptedSample(api: Api, given: Wanted): Promise<SampleView> {
+  const received = await api.call(receiveSample, { body: await receiptOf(api, given) })
   return api.call(decideAcceptance, {
     params: { id: received.id },
     body: { version: received.version, verdict: 'accepted', reason: '', clientConsent: '' },

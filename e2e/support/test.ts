@@ -40,8 +40,6 @@ interface ForTest {
 export const test = base.extend<ForTest & { watched: (context: BrowserContext) => Promise<Page> }, ForWorker>(
   {
     sessionOf: [
-      // Playwright asks for the pattern, also where a fixture needs nothing
-      // eslint-disable-next-line no-empty-pattern
       async ({}, use) => {
         const kept = new Map<string, Promise<StoredState>>()
         await use((account) => {
@@ -54,8 +52,6 @@ export const test = base.extend<ForTest & { watched: (context: BrowserContext) =
     ],
 
     /** A page whose faults fail the test: an error nobody caught, a script or style the policy refused. */
-    // Playwright asks for the pattern, also where a fixture needs nothing
-    // eslint-disable-next-line no-empty-pattern
     watched: async ({}, use) => {
       const faults: string[] = []
       await use(async (context) => {
