@@ -59,6 +59,11 @@ test('a second factor is set up, signs in once a code, and is taken off again', 
     await expect(page.getByRole('img', { name: /^Picture for your device/ }).locator('svg')).toBeVisible()
     const secret = await page.locator('.device-secret').innerText()
     expect(secret).toMatch(/^([A-Z2-7]{4} ){7}[A-Z2-7]{4}$/)
+    await page.getByLabel('The code that your device shows now').fill('12345')
+    await page.getByRole('button', { name: 'Turn it on' }).click()
+    await expect(
+      page.getByText('Enter the six digits that your device shows.', { exact: true }),
+    ).toBeVisible()
     await page.getByLabel('The code that your device shows now').fill(codeOf(secret))
     await page.getByRole('button', { name: 'Turn it on' }).click()
 

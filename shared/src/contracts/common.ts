@@ -36,19 +36,24 @@ export const newPassphrase = z
   )
   .max(LIMITS.passphraseMaximum, `At most ${LIMITS.passphraseMaximum} characters.`)
 
-/** six digits of a device, or a recovery code; spaces and hyphens may stand between */
-export const signInCode = z
+/** spaces and hyphens may stand between */
+const bareCode = z
   .string()
   .max(LIMITS.codeLength, `At most ${LIMITS.codeLength} characters.`)
   .transform((text) => text.replaceAll(/[\s-]+/g, '').toUpperCase())
-  .pipe(
-    z
-      .string()
-      .regex(
-        /^(\d{6}|[A-Z2-7]{16})$/,
-        'Enter the six digits that your device shows, or one of your recovery codes: four groups of four.',
-      ),
-  )
+/** six digits of a device */
+export const deviceCode = bareCode.pipe(
+  z.string().regex(/^\d{6}$/, 'Enter the six digits that your device shows.'),
+)
+/** six digits of a device, or a recovery code */
+export const signInCode = bareCode.pipe(
+  z
+    .string()
+    .regex(
+      /^(\d{6}|[A-Z2-7]{16})$/,
+      'Enter the six digits that your device shows, or one of your recovery codes: four groups of four.',
+    ),
+)
 
 /** a number typed by a person, kept as typed; a decimal comma is named, not guessed */
 export function decimalText(range: { low: number; high: number; what: string; unit?: string }) {

@@ -1,5 +1,5 @@
 import { z } from 'zod'
-import { instant, passphrase, signInCode } from './common.js'
+import { deviceCode, instant, passphrase, signInCode } from './common.js'
 import { defineEndpoint } from './endpoint.js'
 
 export const getSecondFactor = defineEndpoint({
@@ -30,7 +30,7 @@ export const confirmSecondFactor = defineEndpoint({
   method: 'POST',
   path: '/account/second-factor/confirm',
   permission: 'signed-in',
-  body: z.object({ code: signInCode }),
+  body: z.object({ code: deviceCode }),
   response: z.object({ recoveryCodes: z.array(z.string()) }),
 })
 export const removeSecondFactor = defineEndpoint({
